@@ -1,0 +1,87 @@
+"""Declarations of variables, and their initial values."""
+
+from __future__ import annotations
+
+from typing import Literal as Word
+
+from beatwise.frontend import kinds
+from beatwise.frontend.initials import braced
+from beatwise.frontend.libclang import Cursor, children, library
+from beatwise.frontend.lowering import Lowering, operands
+from beatwise.model.kernel import Declare, Expression, Literal, Lost, Statement, Variable
+from beatwise.model.types import StreamType, Type
+
+IGNORED = frozenset({20, 33, 34, 35, 36, 601, *kinds.RECORDS, kinds.ENUM, kinds.FUNCTION, kinds.FUNCTION_TEMPLATE})
+
+
+def declared(given: Lowering, cursor: Cursor) -> list[Statement]:
+    """The statements of one declarator: none for types and the like."""
+    if cursor.kind == kinds.VARIABLE:
+        made = variable(given, cursor)
+        if made.constant and isinstance(made.initial, Literal) and isinstance(made.initial.value, int):
+            given.scope.constants[made.name] = made.initial.value
+        lost = _lost_value(given, cursor, made)
+        return [Declare(made, made.place), lost] if lost else [Declare(made, made.place)]
+    if cursor.kind in IGNORED or cursor.kind in kinds.REFERENCES:
+        if cursor.kind == kinds.ENUM:
+            for one in children(cursor):
+                if one.kind == kinds.ENUMERATOR:
+                    given.scope.constants[given.name(one)] = library().clang_getEnumConstantDeclValue(one)
+        return []
+    if cursor.kind == kinds.UNEXPOSED_DECLARATION:
+        return []
+    return [Lost("a declaration of a kind not known here", given.place(cursor))]
+
+
+def _lost_value(given: Lowering, cursor: Cursor, made: Variable) -> Lost | None:
+    """What to say where the compiler dropped an initial value."""
+    if not given.has_errors or made.initial is not None:
+        return None
+    stretch = given.enter(cursor)
+    if stretch is None or isinstance(made.type, StreamType):
+        return None
+    file, start, end = stretch
+    written = file.contents[start : end + 40].decode("utf-8", "replace")
+    value = written.partition(made.name)[2].lstrip(" \t\r\n")
+    if not value.startswith(("=", "(", "{")):
+        return None
+    return Lost(f"the compiler could not read the initial value of '{made.name}'", made.place)
+
+
+def variable(given: Lowering, cursor: Cursor, *, initial: bool = True) -> Variable:
+    """A local, static or global variable."""
+    lib = library()
+    exact = lib.clang_getCursorType(cursor)
+    of = given.types.of_variable(cursor, exact)
+    scope: Word["local", "static", "global", "parameter"] = "local"
+    if cursor.kind == kinds.PARAMETER:
+        scope = "parameter"
+    elif given.is_global(cursor):
+        scope = "global"
+    elif lib.clang_Cursor_hasVarDeclGlobalStorage(cursor) == 1:
+        scope = "static"
+    constant = given.types.is_constant(exact)
+    value = initial_value(given, cursor, of) if initial else None
+    return Variable(given.variable_key(cursor), given.name(cursor), of, given.place(cursor), scope, value, constant)
+
+
+def initial_value(given: Lowering, cursor: Cursor, of: Type) -> Expression | None:
+    """What a variable is declared with; None where that is left open."""
+    lib = library()
+    value = lib.clang_Cursor_getVarDeclInitializer(cursor)
+    if value.kind not in kinds.EXPRESSIONS:
+        return None
+    if value.kind == kinds.CALL and not operands(value) and _is_left_open(given, value):
+        return None
+    if value.kind == kinds.BRACED:
+        return braced(given, value, of)
+    return given.expression(value)
+
+
+def _is_left_open(given: Lowering, construction: Cursor) -> bool:
+    """Whether a variable is default-constructed by the compiler alone (``point p;``), which sets nothing."""
+    constructor = library().clang_getCursorReferenced(construction)
+    if constructor.kind != kinds.CONSTRUCTOR or given.callee(constructor).key is not None:
+        return False
+    written = given.places.text(library().clang_getCursorExtent(construction)) or ""
+    return not written.endswith(("}", ")"))

@@ -1,0 +1,60 @@
+// What the stand-ins for unknown names are made of: a value that can be built from anything, used in any way, and
+// converted to anything. Everything that is stood in for is declared in namespace _BwInvented.
+//
+// The converting constructors of _BwAny are explicit, so that `known ? any : 1` has one meaning; those of a stand-in
+// type are not, so that it can be passed, returned and initialised like a number.
+#pragma once
+#ifndef _BwAnyMembers
+#define _BwAnyMembers
+#endif
+#include <_bw/traits.h>
+namespace _BwInvented {
+template <class _BwT, class = void> struct _BwIsOpen { static constexpr bool value = false; };
+template <class _BwT> struct _BwIsOpen<_BwT, typename _BwT::_BwOpen> { static constexpr bool value = true; };
+template <class _BwT, class = void> struct _BwIsAny { static constexpr bool value = false; };
+template <class _BwT> struct _BwIsAny<_BwT, typename _BwT::_BwSwallows> { static constexpr bool value = true; };
+struct _BwAny {
+  typedef void _BwOpen, _BwSwallows;
+  _BwAny() = default;
+  _BwAny(const _BwAny &) = default;
+  template <class... _BwA> constexpr explicit _BwAny(_BwA &&...) {}
+  operator long long() const;
+  template <class _BwT, class = _BwEnable<!_BwIsOpen<_BwT>::value>> operator _BwT() const;
+  _BwAny &operator=(const _BwAny &) = default;
+  template <class _BwT> _BwAny &operator=(const _BwT &);
+  template <class... _BwA> _BwAny operator()(_BwA &&...) const;
+  template <class _BwT> _BwAny &operator[](const _BwT &) const;
+  _BwAny &operator*() const;
+  _BwAny &operator++();
+  _BwAny operator++(int);
+  _BwAny &operator--();
+  _BwAny operator--(int);
+  _BwAny operator-() const;
+  _BwAny operator+() const;
+  _BwAny operator~() const;
+  _BwAny *begin() const;
+  _BwAny *end() const;
+  _BwAnyMembers
+};
+#define _BwEither _BwEnable<_BwIsAny<_BwA>::value || _BwIsAny<_BwB>::value>
+#define _BwBinary(_BwOp, _BwResult) template <class _BwA, class _BwB, class = _BwEither> _BwResult operator _BwOp(const _BwA &, const _BwB &);
+#define _BwUpdate(_BwOp) template <class _BwA, class _BwB, class = _BwEither> _BwA &operator _BwOp(_BwA &, const _BwB &);
+_BwBinary(+, _BwAny) _BwBinary(-, _BwAny) _BwBinary(*, _BwAny) _BwBinary(/, _BwAny) _BwBinary(%, _BwAny) _BwBinary(&, _BwAny) _BwBinary(|, _BwAny)
+_BwBinary(^, _BwAny) _BwBinary(>>, _BwAny)
+_BwBinary(==, bool) _BwBinary(!=, bool) _BwBinary(<, bool) _BwBinary(<=, bool) _BwBinary(>, bool) _BwBinary(>=, bool)
+_BwUpdate(+=) _BwUpdate(-=) _BwUpdate(*=) _BwUpdate(/=) _BwUpdate(%=) _BwUpdate(&=) _BwUpdate(|=) _BwUpdate(^=) _BwUpdate(<<=) _BwUpdate(>>=)
+// Not for `stream << any`, which the stream knows better.
+template <class _BwA, class _BwB, class = _BwEither, class = _BwEnable<!__is_class(_BwA) || _BwIsOpen<_BwA>::value>> _BwAny operator<<(const _BwA &, const _BwB &);
+#undef _BwEither
+#undef _BwBinary
+#undef _BwUpdate
+// The body of a stand-in type; each is a type of its own.
+#define _BwStandIn(_BwName)                                                  \
+  _BwName() = default;                                                       \
+  _BwName(const _BwName &) = default;                                        \
+  template <class... _BwArguments> constexpr _BwName(_BwArguments &&...) {}  \
+  _BwName &operator=(const _BwName &) = default;                             \
+  template <class _BwFrom> _BwName &operator=(const _BwFrom &);              \
+  _BwName *operator->() const;                                               \
+  _BwName &operator*() const;
+}

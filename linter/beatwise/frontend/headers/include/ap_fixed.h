@@ -1,0 +1,3 @@
+#pragma once
+#include <_bw/fixed.h>
+#include <ap_int.h>

@@ -1,0 +1,103 @@
+"""The text that declares the stand-ins: what is written, not why."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from dataclasses import dataclass, field
+from typing import Literal as Word
+
+INVENTED = "_BwInvented"  #: the namespace that holds every stand-in
+FIRST_VALUE, VALUE_STEP = 64, 16  #: invented values that C++ insists on; distinct, as case labels must be
+
+Scope = tuple[str, ...]  #: namespaces, outermost first; empty for the global one
+EntryKind = Word["type", "number type", "template", "constant", "bound", "function"]
+MemberKind = Word["value", "type", "function", "constant"]
+Parameter = Word["class", "auto"]
+
+
+@dataclass(slots=True)
+class Entry:
+    """One stand-in. ``number type`` is a built-in type no source uses, for a type that must mix with numbers freely;
+    ``bound`` is a constant with a value that means nothing. ``signatures`` are the template parameter lists in use."""
+
+    kind: EntryKind
+    signatures: set[tuple[Parameter, ...]] = field(default_factory=set)
+    members: dict[str, MemberKind] = field(default_factory=dict)
+    value: int = 0
+
+
+@dataclass(slots=True)
+class Draft:
+    """A prelude that is being written."""
+
+    includes: list[str] = field(default_factory=list)
+    namespaces: set[Scope] = field(default_factory=set)
+    macros: dict[str, str] = field(default_factory=dict)  #: name with its parameters -> replacement
+    names: dict[tuple[Scope, str], Entry] = field(default_factory=dict)
+    of_any: dict[str, MemberKind] = field(default_factory=dict)  #: members of values whose type is not even named
+
+    def add(self, scope: Scope, name: str, entry: Entry) -> None:
+        entry.value = FIRST_VALUE + VALUE_STEP * len(self.names)
+        self.names[scope, name] = entry
+
+    def render(self) -> str:
+        """The prelude as C++."""
+        lines = [f"#include <{header}>" for header in self.includes]
+        if self.names or self.of_any:
+            members = " ".join(_member(name, kind, "static ") for name, kind in self.of_any.items())
+            lines += [f"#define _BwAnyMembers {members}", "#include <_bw/invented.h>"]
+        lines += [f"#define {name} {text}".rstrip() for name, text in self.macros.items()]
+        lines += [_within(scope, "") for scope in sorted(self.namespaces)]
+        for (scope, name), entry in self.names.items():
+            lines.append(_within((INVENTED, *scope), " ".join(_declaration(name, entry))))
+            lines.append(_within(scope, f"using {'::'.join((INVENTED, *scope, name))};"))
+        return "".join(f"{line}\n" for line in lines)
+
+
+def _within(scope: Scope, text: str) -> str:
+    return "".join(f"namespace {name} {{ " for name in scope) + text + " }" * len(scope)
+
+
+def _declaration(name: str, entry: Entry) -> Iterator[str]:
+    match entry.kind:
+        case "type":
+            yield f"struct {name} {_body(name, entry)}"
+        case "number type":
+            yield f"typedef _BitInt(19) {name};"
+        case "template":
+            widest = max(entry.signatures, key=len, default=("class",))
+            parameters = ", ".join(f"{kind} _BwP{at} = {_default(kind)}" for at, kind in enumerate(widest))
+            yield f"template <{parameters}> struct {name} {_body(name, entry)}"
+        case "constant":
+            yield f"extern const int {name};"
+        case "bound":
+            yield f"constexpr int {name} = {entry.value};"
+        case "function":
+            for signature in sorted(entry.signatures | {()}):
+                parameters = "".join(f"{kind} _BwP{at}, " for at, kind in enumerate(signature))
+                yield f"template <{parameters}class... _BwA> _BwAny {name}(_BwA &&...);"
+
+
+def _body(name: str, entry: Entry) -> str:
+    members = " ".join(_member(member, kind, "") for member, kind in entry.members.items())
+    return f": _BwAny {{ _BwStandIn({name}) {members} }};"
+
+
+def _member(name: str, kind: MemberKind, storage: str) -> str:
+    match kind:
+        case "value":
+            return f"{storage}_BwAny {name};"
+        case "type":
+            return f"struct {name} : _BwAny {{ _BwStandIn({name}) }};"
+        case "function":
+            return (
+                f"template <class... _BwA> static _BwAny {name}(_BwA &&...);"
+                f" template <auto _BwP, auto... _BwQ, class... _BwA> static _BwAny {name}(_BwA &&...);"
+                f" template <class _BwP, class... _BwA> static _BwAny {name}(_BwA &&...);"
+            )
+        case "constant":
+            return f"static constexpr int {name} = {FIRST_VALUE};"
+
+
+def _default(kind: Parameter) -> str:
+    return "int" if kind == "class" else str(FIRST_VALUE)

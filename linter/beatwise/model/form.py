@@ -1,0 +1,674 @@
+"""What an address, a bound or a condition depends on, as a closed expression.
+
+A ``Form`` is a polynomial with integer coefficients over symbols: loop counters, kernel parameters, loaded data, and
+operations that are no polynomial (a quotient, a minimum, a comparison, a table) of other forms. Two forms that are built
+the same way are equal, so that ``8 * (k / 8) + k % 8`` is ``k``. Whole numbers only, in the units of their use.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterable, Mapping
+from dataclasses import dataclass
+from itertools import count
+from typing import Literal
+
+from beatwise.model.place import Place
+
+Kind = Literal["counter", "parameter", "data", "carried", "unknown", "operation"]
+TERMS_AT_MOST = 48  #: a longer polynomial is kept as one opaque symbol
+
+_numbers = count(1)
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Symbol:
+    """A quantity that a form is made of; equal only to itself.
+
+    ``counter``: 0, 1, 2, ... of the loop ``loop``. ``parameter``: a scalar argument of the top function. ``data``: read
+    from memory, a stream or a table (``name`` says which, ``at`` the byte offset it was read from, when known); drawn anew in every iteration of ``loops``.
+    ``carried``: what a variable holds when an iteration of ``loop`` starts, where no closed form was found.
+    ``unknown``: could not be followed, ``reason`` says why. ``operation``: ``name`` applied to ``operands``.
+    """
+
+    kind: Kind
+    name: str
+    number: int
+    place: Place | None = None
+    low: int | None = None
+    high: int | None = None
+    loop: int | None = None
+    loops: tuple[int, ...] = ()
+    operands: tuple[Form, ...] = ()
+    depends: frozenset[Symbol] = frozenset()
+    table: tuple[int, ...] = ()
+    reason: str | None = None
+    at: Form | None = None
+
+    def __repr__(self) -> str:
+        if self.kind == "operation":
+            return f"{self.name}({', '.join(map(str, self.operands))})"
+        return f"{self.name}'{self.number}" if self.kind in ("data", "carried", "unknown") else self.name
+
+
+Monomial = tuple[Symbol, ...]
+
+
+class Form:
+    """A polynomial: ``terms`` maps a product of symbols (sorted) to its coefficient; the empty product is the constant."""
+
+    __slots__ = ("_hash", "_leaves", "terms")
+
+    def __init__(self, terms: Mapping[Monomial, int]) -> None:
+        self.terms: dict[Monomial, int] = {key: value for key, value in terms.items() if value}
+        self._hash: int | None = None
+        self._leaves: frozenset[Symbol] | None = None
+
+    def __eq__(self, other: object) -> bool:
+        return isinstance(other, Form) and self.terms == other.terms
+
+    def __hash__(self) -> int:
+        if self._hash is None:
+            self._hash = hash(frozenset(self.terms.items()))
+        return self._hash
+
+    def __repr__(self) -> str:
+        parts = []
+        for monomial, factor in sorted(self.terms.items(), key=lambda item: [s.number for s in item[0]]):
+            body = "*".join(map(repr, monomial))
+            parts.append(str(factor) if not body else body if factor == 1 else f"{factor}*{body}")
+        return " + ".join(parts) or "0"
+
+    @property
+    def constant(self) -> int:
+        """The part without symbols."""
+        return self.terms.get((), 0)
+
+    @property
+    def known(self) -> int | None:
+        """The value, when the form is a plain number."""
+        if not self.terms:
+            return 0
+        return self.terms.get(()) if len(self.terms) == 1 else None
+
+    def __add__(self, other: Form | int) -> Form:
+        if isinstance(other, int):
+            other = number(other)
+        if len(self.terms) < len(other.terms):
+            self, other = other, self
+        terms = dict(self.terms)
+        for monomial, factor in other.terms.items():
+            terms[monomial] = terms.get(monomial, 0) + factor
+        return _bounded(terms, (self, other))
+
+    def __neg__(self) -> Form:
+        return Form({monomial: -factor for monomial, factor in self.terms.items()})
+
+    def __sub__(self, other: Form | int) -> Form:
+        return self + (-other)
+
+    def __mul__(self, other: Form | int) -> Form:
+        if isinstance(other, int):
+            return Form({monomial: factor * other for monomial, factor in self.terms.items()})
+        terms: dict[Monomial, int] = {}
+        if len(self.terms) * len(other.terms) > 4 * TERMS_AT_MOST:
+            return symbol_form(opaque(f"{len(self.terms)} by {len(other.terms)} terms", (self, other)))
+        for left, a in self.terms.items():
+            for right, b in other.terms.items():
+                key = tuple(sorted(left + right, key=lambda symbol: symbol.number))
+                terms[key] = terms.get(key, 0) + a * b
+        return _bounded(terms, (self, other))
+
+    def symbols(self) -> set[Symbol]:
+        """The symbols at the surface: those of the polynomial, operations unopened."""
+        return {symbol for monomial in self.terms for symbol in monomial}
+
+    def leaves(self) -> frozenset[Symbol]:
+        """All symbols below, operations opened, and what opaque symbols depend on."""
+        if self._leaves is None:
+            found: set[Symbol] = set()
+            for symbol in self.symbols():
+                found |= _leaves_of(symbol)
+            self._leaves = frozenset(found)
+        return self._leaves
+
+    def coefficient(self, symbol: Symbol) -> Form | None:
+        """What one more of ``symbol`` adds, when the form is linear in it (0 where it does not occur), else None."""
+        terms: dict[Monomial, int] = {}
+        for monomial, factor in self.terms.items():
+            at = monomial.count(symbol)
+            if at > 1:
+                return None
+            if at == 1:
+                rest = tuple(other for other in monomial if other is not symbol)
+                terms[rest] = terms.get(rest, 0) + factor
+            if any(other.kind != "counter" and symbol in _leaves_of(other) for other in monomial if other is not symbol):
+                return None
+        return Form(terms)
+
+    def without(self, symbol: Symbol) -> Form:
+        """The terms that do not hold ``symbol`` at the surface."""
+        return Form({monomial: factor for monomial, factor in self.terms.items() if symbol not in monomial})
+
+
+def _leaves_of(symbol: Symbol) -> frozenset[Symbol]:
+    if symbol.kind == "operation":
+        found: frozenset[Symbol] = frozenset()
+        for operand in symbol.operands:
+            found |= operand.leaves()
+        return found
+    return frozenset((symbol,)) | symbol.depends
+
+
+def _bounded(terms: dict[Monomial, int], sources: Iterable[Form]) -> Form:
+    form = Form(terms)
+    if len(form.terms) > TERMS_AT_MOST:
+        return symbol_form(opaque(f"{len(form.terms)} terms", sources))
+    return form
+
+
+# ------------------------------------------------------------------------------------------------------- making
+
+
+def number(value: int) -> Form:
+    """A plain number."""
+    return Form({(): value})
+
+
+ZERO, ONE = number(0), number(1)
+
+
+def symbol_form(symbol: Symbol) -> Form:
+    """The form that is just this symbol."""
+    return Form({(symbol,): 1})
+
+
+def counter(name: str, loop: int) -> Symbol:
+    """The counter of a loop: 0 in its first iteration."""
+    return Symbol("counter", name, next(_numbers), low=0, loop=loop)
+
+
+def parameter(name: str, low: int | None, high: int | None, place: Place | None = None) -> Symbol:
+    """A scalar argument of the top function."""
+    return Symbol("parameter", name, next(_numbers), place=place, low=low, high=high)
+
+
+def data(
+    name: str,
+    place: Place | None,
+    loops: tuple[int, ...],
+    *,
+    low: int | None = None,
+    high: int | None = None,
+    at: Form | None = None,
+    depends: frozenset[Symbol] = frozenset(),
+) -> Symbol:
+    """A value read from memory, a stream or a table that is not constant."""
+    return Symbol("data", name, next(_numbers), place=place, low=low, high=high, loops=loops, at=at, depends=depends)
+
+
+def carried(name: str, loop: int, low: int | None = None, high: int | None = None) -> Symbol:
+    """What a variable holds at the start of an iteration."""
+    return Symbol("carried", name, next(_numbers), loop=loop, low=low, high=high)
+
+
+def unknown(reason: str, place: Place | None, loops: tuple[int, ...] = (), depends: frozenset[Symbol] = frozenset()) -> Symbol:
+    """A value that could not be followed."""
+    return Symbol("unknown", "?", next(_numbers), place=place, reason=reason, loops=loops, depends=depends)
+
+
+def opaque(reason: str, sources: Iterable[Form]) -> Symbol:
+    """A computed value whose form is given up, but not what it depends on (a real number, an overlong polynomial)."""
+    depends: frozenset[Symbol] = frozenset()
+    for source in sources:
+        depends |= source.leaves()
+    return Symbol("unknown", "~", next(_numbers), depends=depends, reason=None if depends else reason)
+
+
+_operations: dict[tuple[str, tuple[Form, ...], tuple[int, ...]], Symbol] = {}
+
+
+def operation(name: str, *operands: Form, table: tuple[int, ...] = ()) -> Form:
+    """An operation that is no polynomial, unsimplified; the same name and operands give the same symbol."""
+    key = (name, operands, table)
+    found = _operations.get(key)
+    if found is None:
+        low, high = _operation_bounds(name, operands, table)
+        found = Symbol("operation", name, next(_numbers), operands=operands, table=table, low=low, high=high)
+        _operations[key] = found
+    return symbol_form(found)
+
+
+# ------------------------------------------------------------------------------------------------------- bounds
+
+
+def bounds(form: Form) -> tuple[int | None, int | None]:
+    """The least and the greatest value the form can take, by its symbols' own bounds; None where there is none."""
+    low: int | None = 0
+    high: int | None = 0
+    for monomial, factor in form.terms.items():
+        a: int | None = 1
+        b: int | None = 1
+        for symbol in monomial:
+            a, b = _product((a, b), (symbol.low, symbol.high))
+        if factor < 0:
+            a, b = b, a
+        low = None if low is None or a is None else low + factor * a
+        high = None if high is None or b is None else high + factor * b
+    return low, high
+
+
+def _product(
+    left: tuple[int | None, int | None], right: tuple[int | None, int | None]
+) -> tuple[int | None, int | None]:
+    if None not in left and None not in right:
+        corners = [a * b for a in left for b in right if a is not None and b is not None]
+        return min(corners), max(corners)
+    if left[0] is not None and right[0] is not None and left[0] >= 0 and right[0] >= 0:
+        top = left[1] * right[1] if left[1] is not None and right[1] is not None else None
+        return left[0] * right[0], top
+    return None, None
+
+
+def _operation_bounds(
+    name: str, operands: tuple[Form, ...], table: tuple[int, ...]
+) -> tuple[int | None, int | None]:
+    if name in ("lt", "le", "eq", "ne", "not", "and?", "or?"):
+        return 0, 1
+    if name == "lookup" and table:
+        return min(table), max(table)
+    ranges = [bounds(operand) for operand in operands]
+    if name in ("div", "floordiv"):
+        low, high = ranges[0]
+        divisor = operands[1].known
+        if divisor and divisor > 0:
+            return (None if low is None else low // divisor), (None if high is None else high // divisor)
+        if low is not None and low >= 0 and ranges[1][0] is not None and ranges[1][0] >= 0:
+            return 0, high
+    if name == "mod":
+        divisor_high = ranges[1][1]
+        if ranges[0][0] is not None and ranges[0][0] >= 0 and divisor_high is not None:
+            return 0, divisor_high - 1
+        if ranges[0][0] is not None and ranges[0][0] >= 0:
+            return 0, ranges[0][1]
+    if name in ("min", "max"):
+        pick: Callable[[Iterable[int]], int] = min if name == "min" else max
+        lows = [low for low, _ in ranges if low is not None]
+        highs = [high for _, high in ranges if high is not None]
+        if name == "min":
+            return (pick(lows) if len(lows) == 2 else None), (min(highs) if highs else None)
+        return (max(lows) if lows else None), (pick(highs) if len(highs) == 2 else None)
+    if name == "select":
+        return _hull(ranges[1], ranges[2])
+    if name == "wrap":
+        bits, signed = operands[1].constant, operands[2].constant
+        return (-(1 << bits - 1), (1 << bits - 1) - 1) if signed else (0, (1 << bits) - 1)
+    if name == "and":
+        highs = [high for low, high in ranges if low is not None and low >= 0 and high is not None]
+        return (0, min(highs)) if highs else (None, None)
+    if name in ("or", "xor") and all(low is not None and low >= 0 and high is not None for low, high in ranges):
+        return 0, (1 << max(high.bit_length() for _, high in ranges if high is not None)) - 1
+    if name == "shl" and ranges[0][0] is not None and ranges[0][0] >= 0:
+        return 0, None
+    return None, None
+
+
+def _hull(left: tuple[int | None, int | None], right: tuple[int | None, int | None]) -> tuple[int | None, int | None]:
+    low = None if left[0] is None or right[0] is None else min(left[0], right[0])
+    high = None if left[1] is None or right[1] is None else max(left[1], right[1])
+    return low, high
+
+
+# --------------------------------------------------------------------------------------------------- arithmetic
+
+
+def floordiv(value: Form, divisor: Form) -> Form:
+    """``value / divisor`` rounded down; for values that are not negative this is also what C++ computes.
+
+    >>> k = symbol_form(counter("k", 1))
+    >>> floordiv(k * 8 + 3, number(8)) == k
+    True
+    """
+    by = divisor.known
+    if value.known is not None and by:
+        return number(value.known // by)
+    if by == 1:
+        return value
+    if by is None or by <= 0:
+        if value == divisor:
+            return ONE
+        quotient = _divided_exactly(value, divisor)
+        return quotient if quotient is not None else operation("floordiv", value, divisor)
+    whole = Form({m: f // by for m, f in value.terms.items() if f % by == 0 and m})
+    rest = Form({m: f for m, f in value.terms.items() if f % by or not m})
+    low, high = bounds(rest)
+    if low is not None and high is not None and low // by == high // by:
+        return whole + low // by
+    if len(rest.terms) == 1 and rest.constant == 0:
+        ((monomial, factor),) = rest.terms.items()
+        if factor == 1 and len(monomial) == 1 and monomial[0].name == "floordiv" and monomial[0].kind == "operation":
+            inner, inner_by = monomial[0].operands
+            if inner_by.known and inner_by.known > 0:
+                return whole + operation("floordiv", inner, number(inner_by.known * by))
+    shift = rest.constant // by
+    return whole + operation("floordiv", rest - shift * by, divisor) + shift
+
+
+def _divided_exactly(value: Form, divisor: Form) -> Form | None:
+    """``value / divisor`` for a divisor that is one product of symbols which divides every term."""
+    if len(divisor.terms) != 1:
+        return None
+    ((monomial, factor),) = divisor.terms.items()
+    terms: dict[Monomial, int] = {}
+    for other, coefficient in value.terms.items():
+        rest = list(other)
+        for symbol in monomial:
+            if symbol not in rest:
+                return None
+            rest.remove(symbol)
+        if coefficient % factor:
+            return None
+        terms[tuple(rest)] = coefficient // factor
+    return Form(terms)
+
+
+def div(value: Form, divisor: Form) -> Form:
+    """C++ division, which rounds toward zero."""
+    low, _ = bounds(value)
+    low_by, _ = bounds(divisor)
+    if low is not None and low >= 0 and low_by is not None and low_by >= 0:
+        return floordiv(value, divisor)
+    if value.known is not None and divisor.known:
+        quotient = abs(value.known) // abs(divisor.known)
+        return number(quotient if (value.known < 0) == (divisor.known < 0) else -quotient)
+    exact = _divided_exactly(value, divisor) if divisor.known is None else None
+    if divisor.known and all(factor % divisor.known == 0 for factor in value.terms.values()):
+        exact = Form({monomial: factor // divisor.known for monomial, factor in value.terms.items()})
+    return exact if exact is not None else operation("div", value, divisor)
+
+
+def mod(value: Form, divisor: Form) -> Form:
+    """C++ remainder; kept as ``value - divisor * quotient`` so that quotient and remainder add up again."""
+    return value - divisor * div(value, divisor)
+
+
+def mask(value: Form, bits: int) -> Form:
+    """The low ``bits`` bits of ``value``."""
+    return value - floordiv(value, number(1 << bits)) * (1 << bits)
+
+
+def minimum(left: Form, right: Form) -> Form:
+    """The lesser of two."""
+    low, high = bounds(left - right)
+    if high is not None and high <= 0:
+        return left
+    if low is not None and low >= 0:
+        return right
+    return operation("min", left, right)
+
+
+def maximum(left: Form, right: Form) -> Form:
+    """The greater of two."""
+    low, high = bounds(left - right)
+    if low is not None and low >= 0:
+        return left
+    if high is not None and high <= 0:
+        return right
+    return operation("max", left, right)
+
+
+def less(left: Form, right: Form) -> Form:
+    """1 where ``left < right``, else 0."""
+    low, high = bounds(left - right)
+    if high is not None and high < 0:
+        return ONE
+    if low is not None and low >= 0:
+        return ZERO
+    return operation("lt", left, right)
+
+
+def equal(left: Form, right: Form) -> Form:
+    """1 where both are the same, else 0."""
+    low, high = bounds(left - right)
+    if low == high == 0:
+        return ONE
+    if (low is not None and low > 0) or (high is not None and high < 0):
+        return ZERO
+    return operation("eq", left, right)
+
+
+def negation(condition: Form) -> Form:
+    """1 where the condition is 0, else 0."""
+    known = condition.known
+    if known is not None:
+        return number(0 if known else 1)
+    if len(condition.terms) == 1:
+        ((monomial, factor),) = condition.terms.items()
+        if factor == 1 and len(monomial) == 1 and monomial[0].kind == "operation":
+            symbol = monomial[0]
+            if symbol.name == "not":
+                return symbol.operands[0] if _is_truth(symbol.operands[0]) else operation("ne", symbol.operands[0], ZERO)
+            if symbol.name == "lt":
+                return less(symbol.operands[1], symbol.operands[0] + 1)
+            if symbol.name == "eq":
+                return operation("ne", *symbol.operands)
+            if symbol.name == "ne":
+                return operation("eq", *symbol.operands)
+    return operation("not", condition)
+
+
+def _is_truth(form: Form) -> bool:
+    return bounds(form) in ((0, 1), (0, 0), (1, 1))
+
+
+def both(left: Form, right: Form) -> Form:
+    """1 where neither is 0."""
+    if left.known == 0 or right.known == 0:
+        return ZERO
+    if left.known is not None:
+        return truth(right)
+    if right.known is not None:
+        return truth(left)
+    return left if left == right else operation("and?", left, right)
+
+
+def either(left: Form, right: Form) -> Form:
+    """1 where one is not 0."""
+    if left.known or right.known:
+        return ONE
+    if left.known == 0:
+        return truth(right)
+    if right.known == 0:
+        return truth(left)
+    return left if left == right else operation("or?", left, right)
+
+
+def truth(form: Form) -> Form:
+    """1 where the form is not 0."""
+    if form.known is not None:
+        return number(1 if form.known else 0)
+    return form if _is_truth(form) else negation(equal(form, ZERO))
+
+
+def select(condition: Form, yes: Form, no: Form) -> Form:
+    """``yes`` where the condition is not 0, else ``no``."""
+    if condition.known is not None:
+        return yes if condition.known else no
+    if yes == no:
+        return yes
+    simple = _as_minimum(condition, yes, no)
+    return simple if simple is not None else operation("select", condition, yes, no)
+
+
+def _as_minimum(condition: Form, yes: Form, no: Form) -> Form | None:
+    """``a < b ? a : b`` and its kin."""
+    if len(condition.terms) != 1:
+        return None
+    ((monomial, factor),) = condition.terms.items()
+    if factor != 1 or len(monomial) != 1 or monomial[0].kind != "operation" or monomial[0].name != "lt":
+        return None
+    gap = monomial[0].operands[0] - monomial[0].operands[1]
+    if yes - no == gap or yes - no == gap - 1:
+        return operation("min", yes, no)
+    if no - yes == gap or no - yes == gap - 1:
+        return operation("max", yes, no)
+    return None
+
+
+def wrap(value: Form, bits: int, signed: bool) -> Form:
+    """The value as an integer of ``bits`` holds it; itself where it is known to fit."""
+    low, high = bounds(value)
+    least = -(1 << bits - 1) if signed else 0
+    most = (1 << bits - 1) - 1 if signed else (1 << bits) - 1
+    if low is not None and high is not None and least <= low and high <= most:
+        return value
+    if value.known is not None:
+        return number((value.known - least) % (1 << bits) + least)
+    return operation("wrap", value, number(bits), number(int(signed)))
+
+
+def lookup(table: tuple[int, ...], index: Form) -> Form:
+    """An element of a constant table."""
+    if index.known is not None and 0 <= index.known < len(table):
+        return number(table[index.known])
+    return operation("lookup", index, table=table)
+
+
+# ------------------------------------------------------------------------------------- rebuilding and evaluating
+
+
+def substitute(form: Form, values: Mapping[Symbol, Form], memo: dict[Symbol, Form] | None = None) -> Form:
+    """The form with symbols replaced, simplified anew."""
+    memo = {} if memo is None else memo
+    result = ZERO
+    for monomial, factor in form.terms.items():
+        product = number(factor)
+        for symbol in monomial:
+            product = product * _substituted(symbol, values, memo)
+        result = result + product
+    return result
+
+
+def _substituted(symbol: Symbol, values: Mapping[Symbol, Form], memo: dict[Symbol, Form]) -> Form:
+    found = memo.get(symbol)
+    if found is not None:
+        return found
+    if symbol in values:
+        result = values[symbol]
+    elif symbol.kind == "operation":
+        operands = [substitute(operand, values, memo) for operand in symbol.operands]
+        result = symbol_form(symbol) if tuple(operands) == symbol.operands else rebuilt(symbol, operands)
+    elif symbol.kind in ("data", "unknown") and any(other in values for other in symbol.depends):
+        depends: frozenset[Symbol] = frozenset()
+        for other in symbol.depends:
+            depends |= values[other].leaves() if other in values else frozenset((other,))
+        at = substitute(symbol.at, values, memo) if symbol.at is not None else None
+        result = symbol_form(
+            Symbol(symbol.kind, symbol.name, symbol.number, symbol.place, symbol.low, symbol.high,
+                   symbol.loop, symbol.loops, (), depends, (), symbol.reason, at)
+        )  # fmt: skip
+    else:
+        result = symbol_form(symbol)
+    memo[symbol] = result
+    return result
+
+
+def rebuilt(symbol: Symbol, operands: list[Form]) -> Form:
+    """The symbol's operation, applied to other operands."""
+    match symbol.name:
+        case "lt":
+            return less(*operands)
+        case "eq":
+            return equal(*operands)
+        case "ne":
+            return negation(equal(*operands))
+        case "not":
+            return negation(*operands)
+        case "and?":
+            return both(*operands)
+        case "or?":
+            return either(*operands)
+        case "select":
+            return select(*operands)
+        case "min":
+            return minimum(*operands)
+        case "max":
+            return maximum(*operands)
+        case "floordiv":
+            return floordiv(*operands)
+        case "div":
+            return div(*operands)
+        case "wrap":
+            return wrap(operands[0], operands[1].constant, bool(operands[2].constant))
+        case "lookup":
+            return lookup(symbol.table, operands[0])
+    values = [operand.known for operand in operands]
+    if symbol.name in PLAIN and all(value is not None for value in values):
+        return number(PLAIN[symbol.name](*values))
+    return operation(symbol.name, *operands, table=symbol.table)
+
+
+def _shift_left(value: int, by: int) -> int:
+    return value << by if 0 <= by < 512 else 0
+
+
+def _shift_right(value: int, by: int) -> int:
+    return value >> by if by >= 0 else 0
+
+
+def _divided(value: int, by: int) -> int:
+    if by == 0:
+        return 0
+    quotient = abs(value) // abs(by)
+    return quotient if (value < 0) == (by < 0) else -quotient
+
+
+def _wrapped(value: int, bits: int, signed: int) -> int:
+    least = -(1 << bits - 1) if signed else 0
+    return (value - least) % (1 << bits) + least
+
+
+PLAIN: dict[str, Callable[..., int]] = {
+    "lt": lambda a, b: int(a < b),
+    "eq": lambda a, b: int(a == b),
+    "ne": lambda a, b: int(a != b),
+    "not": lambda a: int(not a),
+    "and?": lambda a, b: int(bool(a) and bool(b)),
+    "or?": lambda a, b: int(bool(a) or bool(b)),
+    "select": lambda c, a, b: a if c else b,
+    "min": min,
+    "max": max,
+    "floordiv": lambda a, b: a // b if b else 0,
+    "div": _divided,
+    "wrap": _wrapped,
+    "and": lambda a, b: a & b,
+    "or": lambda a, b: a | b,
+    "xor": lambda a, b: a ^ b,
+    "shl": _shift_left,
+    "shr": _shift_right,
+}  #: what each operation computes on plain numbers
+
+
+def evaluate(form: Form, value_of: Callable[[Symbol], int], memo: dict[Symbol, int] | None = None) -> int:
+    """The form's value; ``value_of`` gives each symbol that is no operation. ``memo`` keeps symbols already computed."""
+    memo = {} if memo is None else memo
+    total = 0
+    for monomial, factor in form.terms.items():
+        product = factor
+        for symbol in monomial:
+            product *= _value(symbol, value_of, memo)
+        total += product
+    return total
+
+
+def _value(symbol: Symbol, value_of: Callable[[Symbol], int], memo: dict[Symbol, int]) -> int:
+    found = memo.get(symbol)
+    if found is None:
+        if symbol.kind != "operation":
+            found = value_of(symbol)
+        elif symbol.name == "lookup":
+            index = evaluate(symbol.operands[0], value_of, memo)
+            found = symbol.table[index] if 0 <= index < len(symbol.table) else 0
+        else:
+            found = PLAIN[symbol.name](*[evaluate(operand, value_of, memo) for operand in symbol.operands])
+        memo[symbol] = found
+    return found

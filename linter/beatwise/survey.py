@@ -1,0 +1,197 @@
+"""The whole program on one screen: paths and settings in, a survey of every kernel out."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Mapping, Sequence
+from dataclasses import dataclass
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+from beatwise.errors import UnknownName
+from beatwise.memory import boards
+from beatwise.model.access import Trace
+from beatwise.model.board import Board
+from beatwise.model.finding import Facts, Finding
+from beatwise.model.kernel import Directive, Problem, Program
+from beatwise.model.traffic import PortTraffic, Traffic
+from beatwise.report.sheet import Sheet, Survey, sheet
+from beatwise.settings import Settings
+from beatwise.workers import Done, Limits, each
+
+if TYPE_CHECKING:
+    from beatwise.source.acceptances import Acceptance
+
+
+@dataclass(frozen=True, slots=True)
+class KernelSurvey:
+    """One kernel with all that is known about it."""
+
+    trace: Trace
+    traffic: tuple[Traffic, ...]
+    ports: tuple[PortTraffic, ...]
+    findings: tuple[Finding, ...]
+    seconds: float | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class Task:
+    """One group of files to analyse together, with all that the analysis needs: it may happen in another process."""
+
+    files: Mapping[str, str]
+    includes: Mapping[str, str]
+    board: Board
+    script: tuple[Directive, ...]
+    settings: Settings
+
+
+@dataclass(frozen=True, slots=True)
+class Outcome:
+    """What became of a group. ``complete``: every file was read in full and a kernel was found."""
+
+    sheets: tuple[Sheet, ...] = ()
+    problems: tuple[Problem, ...] = ()
+    complete: bool = False
+    functions: tuple[str, ...] = ()  #: that could have been named as top functions, when the one asked for is not there
+    acceptances: tuple[Acceptance, ...] = ()
+    used: frozenset[Acceptance] = frozenset()
+
+
+def survey(paths: Sequence[Path], settings: Settings, *, only_kernels: bool = False) -> Survey:
+    """The survey of all kernels in the files and folders, in their order. UserError when it cannot be begun.
+
+    ``only_kernels``: named files are treated like those found in a folder, passed over when they hold no kernel.
+    """
+    from beatwise.source.files import gather
+
+    memory, script = boards.board(settings.board), _script(settings.directives)
+    gathered = gather(
+        paths, include=settings.include, tops=settings.top, ignore=settings.ignore, only_kernels=only_kernels
+    )
+    tasks = [Task(group.files, group.includes, memory, script, settings) for group in gathered.groups]
+    limits = Limits(settings.time_limit_seconds, settings.memory_limit_mb)
+    outcomes = [
+        answer.result if isinstance(answer, Done) else Outcome(problems=(Problem(group.name, None, answer.why),))
+        for group, answer in zip(gathered.groups, each(analyse, tasks, limits=limits, jobs=settings.jobs), strict=True)
+    ]
+    _check_tops(settings.top, outcomes)
+    named = {group.name for group in gathered.groups} & _names(paths)
+    incomplete = {group.name for group, outcome in zip(gathered.groups, outcomes, strict=True) if not outcome.complete}
+    problems = [
+        *gathered.problems,
+        *(problem for outcome in outcomes for problem in outcome.problems),
+        *_idle(outcomes),
+    ]
+    return Survey(
+        kernels=tuple(sheet for outcome in outcomes for sheet in outcome.sheets),
+        problems=tuple(dict.fromkeys(problems)),
+        board=memory.name,
+        failed=bool(incomplete & named) or (bool(outcomes) and len(incomplete) == len(outcomes)),
+    )
+
+
+def survey_texts(
+    files: Mapping[str, str],
+    *,
+    board: str = "hbm2-32ch",
+    given: Mapping[str, int] | None = None,
+    top: str | None = None,
+    includes: Mapping[str, str] | None = None,
+    defines: Sequence[str] = (),
+    script: str = "",
+) -> tuple[KernelSurvey, ...]:
+    """The kernels of some texts (name -> text), analysed here and now, without a worker's limits."""
+    from beatwise.source.directives import read_script
+
+    settings = Settings(top=(top,) if top else (), given=given or {}, define=tuple(defines))
+    task = Task(files, includes or {}, boards.board(board), read_script(script, "script"), settings)
+    return tuple(kernel for _, kernels in _programs(task) for kernel in kernels)
+
+
+def analyse(task: Task) -> Outcome:
+    """One group, from text to sheets; what a worker does."""
+    from beatwise.acceptance import accepted, accepts
+    from beatwise.frontend.program import NoSuchTop
+    from beatwise.source.acceptances import acceptances_in
+
+    name = next(iter(task.files))
+    try:
+        programs = list(_programs(task))
+    except NoSuchTop as error:
+        return Outcome(problems=(Problem(name, None, str(error)),), functions=tuple(error.names))
+    kernels = [kernel for _, found in programs for kernel in found]
+    unread = [problem for program, _ in programs for problem in program.problems]
+    if not kernels and not unread:
+        unread = [Problem(name, None, "no kernel function in it")]
+    texts = {**task.files, **task.includes}
+    acceptances = tuple(acceptance for file, text in texts.items() for acceptance in acceptances_in(text, file))
+    findings = [finding for kernel in kernels for finding in kernel.findings]
+    return Outcome(
+        sheets=tuple(
+            sheet(each.trace, each.traffic, each.ports, accepted(each.findings, acceptances), each.seconds)
+            for each in kernels
+        ),
+        problems=tuple(dict.fromkeys([*unread, *(problem for each in kernels for problem in each.trace.problems)])),
+        complete=not unread,
+        acceptances=acceptances,
+        used=frozenset(each for each in acceptances if any(accepts(each, finding) for finding in findings)),
+    )
+
+
+def _programs(task: Task) -> Iterator[tuple[Program, tuple[KernelSurvey, ...]]]:
+    """The program below each top function asked for, with its kernels."""
+    from beatwise.frontend.program import read_program
+
+    for top in task.settings.top or (None,):
+        program = read_program(
+            task.files, top=top, includes=task.includes, defines=task.settings.define, script=task.script
+        )
+        yield program, _kernels(program, task.board, task.settings)
+
+
+def _kernels(program: Program, board: Board, settings: Settings) -> tuple[KernelSurvey, ...]:
+    from beatwise.trace import trace_program
+    from beatwise.traffic.rates import measure
+    from beatwise_rules import Thresholds, ask
+
+    limits = settings.limits
+    thresholds = Thresholds(limits.error_loss, limits.warning_loss, limits.error_share)
+    found = []
+    for trace in trace_program(program, settings.given):
+        measured = measure(trace, board, settings.given)
+        facts = Facts(trace, board, measured.traffic, measured.ports, settings.given)
+        findings = ask(facts, thresholds=thresholds, levels=settings.levels)
+        found.append(KernelSurvey(trace, measured.traffic, measured.ports, findings))
+    return tuple(found)
+
+
+def _script(paths: Sequence[Path]) -> tuple[Directive, ...]:
+    from beatwise.source.directives import read_script
+    from beatwise.source.read import read_text, shown
+
+    return tuple(directive for path in paths for directive in read_script(read_text(path).text, shown(path)))
+
+
+def _names(paths: Sequence[Path]) -> set[str]:
+    from beatwise.source.read import shown
+
+    return {shown(path) for path in paths}
+
+
+def _check_tops(tops: Sequence[str], outcomes: Sequence[Outcome]) -> None:
+    """A top function that no group has is a mistake in the command."""
+    present = {sheet.kernel for outcome in outcomes for sheet in outcome.sheets}
+    known = {name for outcome in outcomes for name in outcome.functions}
+    for top in tops:
+        if top not in present and known:
+            raise UnknownName("top function", top, known)
+
+
+def _idle(outcomes: Sequence[Outcome]) -> tuple[Problem, ...]:
+    """Acceptances that do not count anywhere; a header's may count in one group and be idle in another."""
+    acceptances = [acceptance for outcome in outcomes for acceptance in outcome.acceptances]
+    if not acceptances:
+        return ()
+    from beatwise.acceptance import idle
+    from beatwise_rules import rule_names
+
+    return idle(acceptances, frozenset().union(*(outcome.used for outcome in outcomes)), rule_names())

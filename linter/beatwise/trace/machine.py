@@ -1,0 +1,556 @@
+"""Follows a kernel from its top function: every statement once, every loop body once, calls in place.
+
+Numbers are forms, so one pass over a loop body stands for all its iterations: what the body changes enters it as a
+symbol, and when the body has been followed, ``recurrence`` says what that symbol is in iteration k. A branch is followed
+both ways unless its condition is known. Nothing of the user's code is ever run.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass, field, replace
+from itertools import count
+
+from beatwise.model.access import Access, Choice, Guard, LoopInstance, Stream, StreamOperation
+from beatwise.model.form import (
+    ONE,
+    ZERO,
+    Form,
+    Symbol,
+    bounds,
+    data,
+    equal,
+    negation,
+    number,
+    symbol_form,
+    truth,
+    unknown,
+)
+from beatwise.model.kernel import (
+    Block,
+    Declare,
+    Evaluate,
+    Expression,
+    Function,
+    If,
+    Leave,
+    Loop,
+    Lost,
+    Program,
+    Return,
+    Statement,
+    Switch,
+)
+from beatwise.model.place import Place
+from beatwise.model.types import (
+    ArrayType,
+    IntType,
+    PointerType,
+    RecordType,
+    ReferenceType,
+    StreamType,
+    Type,
+    UnknownType,
+    VectorType,
+)
+from beatwise.trace.record import Recording
+from beatwise.trace.state import State, conjunction, joined
+from beatwise.trace.values import (
+    NOTHING,
+    ChoiceSpot,
+    Closure,
+    LocalSpot,
+    LostSpot,
+    MemorySpot,
+    Number,
+    Pointer,
+    Record,
+    Root,
+    Spot,
+    Value,
+    choose,
+    depending,
+)
+
+STEPS_AT_MOST = 400_000  #: statements and expressions followed in one kernel
+CALLS_AT_MOST = 200  #: depth of calls
+RECURSION_AT_MOST = 40  #: of one function in itself
+
+
+class OutOfSteps(Exception):
+    """The kernel is larger than the tracer follows; raised and caught in this room."""
+
+
+@dataclass(slots=True)
+class Frame:
+    """One activation of a function: where its variables are, and the calls that led to it."""
+
+    function: Function
+    activation: int
+    roots: dict[str, Root]
+    this: Spot | None
+    chain: tuple[Place, ...]
+    outer: Frame | None = None
+
+
+@dataclass(slots=True)
+class Flow:
+    """How a statement ends: ``next`` is the state after it (None: it never gets there), the rest have left it."""
+
+    next: State | None
+    breaks: list[State] = field(default_factory=list)
+    continues: list[State] = field(default_factory=list)
+    returns: list[tuple[State, Value]] = field(default_factory=list)
+
+    def take(self, other: Flow) -> None:
+        """Adds what has left ``other``."""
+        self.breaks += other.breaks
+        self.continues += other.continues
+        self.returns += other.returns
+
+
+@dataclass(frozen=True, slots=True)
+class Argument:
+    """A pointer argument of the top function that is an interface."""
+
+    name: str
+    interface: str
+    volatile: bool
+    array_bytes: int | None
+
+
+class Machine:
+    """The state of following one kernel. Its parts are split over this file, ``expressions``, ``calls`` and ``loops``."""
+
+    def __init__(self, program: Program, arguments: Mapping[str, Argument], given: Mapping[str, int]) -> None:
+        self.program, self.arguments, self.given = program, arguments, given
+        self.record = Recording()
+        self.open: tuple[int, ...] = ()  #: numbers of the loops around, outermost first
+        self.frame: Frame
+        self.process: str | None = None
+        self.scouting = 0
+        self.steps = 0
+        self.types: dict[Root, Type] = {}
+        self.constant: set[Root] = set()
+        self.given_used: dict[str, Symbol] = {}
+        self.notes: list[tuple[Place, str]] = []
+        self._activations = count(1)
+        self._loops = count(1)
+        self.loop_heads: dict[int, LoopInstance] = {}
+        self.calls: list[str] = []
+
+    # ------------------------------------------------------------------------------------------- bookkeeping
+
+    def step(self) -> None:
+        self.steps += 1
+        if self.steps > STEPS_AT_MOST:
+            raise OutOfSteps
+
+    def new_loop(self) -> int:
+        return next(self._loops)
+
+    def root(self, key: str) -> Root:
+        """The variable that a name means here."""
+        frame: Frame | None = self.frame
+        while frame is not None:
+            found = frame.roots.get(key)
+            if found is not None:
+                return found
+            frame = frame.outer
+        return (key, 0)
+
+    def lost(self, reason: str, place: Place, *made_of: Form) -> Number:
+        """A value that could not be followed."""
+        depends: frozenset[Symbol] = frozenset()
+        for form in made_of:
+            depends |= form.leaves()
+        return Number(symbol_form(unknown(reason, place, self.open, depends)))
+
+    # --------------------------------------------------------------------------------------- loads and stores
+
+    def load(self, spot: Spot, place: Place, state: State) -> Value:
+        """What the spot holds; a load from memory is recorded."""
+        match spot:
+            case MemorySpot():
+                if isinstance(spot.type, ArrayType):
+                    return Pointer(spot)
+                self._access(spot, "read", place, state)
+                return self._datum(spot, place)
+            case LocalSpot():
+                return self._load_local(spot, place, state)
+            case ChoiceSpot():
+                values = []
+                for condition, arm in spot.arms:
+                    branch = state.under(condition, spot.place, self.open)
+                    self._choosing = Choice(spot.selector, spot.place, alternatives(spot))
+                    values.append((condition, self.load(arm, place, branch)))
+                    self._choosing = None
+                result = values[-1][1]
+                for condition, value in reversed(values[:-1]):
+                    result = choose(condition, value, result, spot.place)
+                return result
+            case LostSpot():
+                self._lost_access(spot, "read", place, state)
+                return self.lost(spot.reason, place, spot.depends)
+
+    _choosing: Choice | None = None
+
+    def _datum(self, spot: MemorySpot, place: Place) -> Value:
+        low = high = None
+        kind = spot.type
+        if isinstance(kind, IntType):
+            low = -(1 << kind.bits - 1) if kind.signed else 0
+            high = (1 << kind.bits - 1) - 1 if kind.signed else (1 << kind.bits) - 1
+        return Number(
+            symbol_form(
+                data(spot.argument, place, self.open, low=low, high=high, at=spot.offset, depends=spot.offset.leaves())
+            )
+        )
+
+    def _load_local(self, spot: LocalSpot, place: Place, state: State) -> Value:
+        if isinstance(spot.type, ArrayType):
+            return Pointer(LocalSpot(spot.root, (*spot.path, ZERO), spot.type.element))
+        found = state.read(spot, place)
+        if found is not None:
+            return found
+        if isinstance(spot.type, StreamType | RecordType | VectorType):
+            return Record({})
+        if isinstance(spot.type, ReferenceType | PointerType):
+            return Pointer(LostSpot("a pointer that was never set"))
+        index = [step for step in spot.path if isinstance(step, Form)]
+        return self.lost("a variable that was never set", place, *index)
+
+    def store(self, spot: Spot, value: Value, place: Place, state: State) -> None:
+        """Stores; a store to memory is recorded."""
+        match spot:
+            case MemorySpot():
+                self._access(spot, "write", place, state)
+            case LocalSpot():
+                if isinstance(value, Number):
+                    from beatwise.trace.integers import fitted
+
+                    value = Number(fitted(value.form, spot.type))
+                state.write(spot, value)
+            case ChoiceSpot():
+                for condition, arm in spot.arms:
+                    branch = state.under(condition, spot.place, self.open)
+                    self._choosing = Choice(spot.selector, spot.place, alternatives(spot))
+                    if isinstance(arm, LocalSpot):
+                        old = state.read(arm, place)
+                        branch.write(arm, choose(condition, value, old, place) if old is not None else value)
+                        state.cells, state.filled = branch.cells, branch.filled
+                    else:
+                        self.store(arm, value, place, branch)
+                    self._choosing = None
+            case LostSpot():
+                self._lost_access(spot, "write", place, state)
+
+    def _access(self, spot: MemorySpot, direction: str, place: Place, state: State, *, manual: bool = False) -> None:
+        if self.scouting:
+            return
+        argument = self.arguments[spot.argument]
+        unresolved = None
+        if not spot.unit_bytes:
+            named = spot.type.name if isinstance(spot.type, UnknownType) else "its type"
+            unresolved = f"the size of {named} is not known"
+        self.record.accesses.append(
+            (
+                Access(
+                    place=place,
+                    chain=self.frame.chain,
+                    function=self.frame.function.name,
+                    argument=spot.argument,
+                    interface=argument.interface,
+                    direction="read" if direction == "read" else "write",
+                    element_bytes=spot.unit_bytes,
+                    part_bytes=min(spot.part_bytes or spot.unit_bytes, spot.unit_bytes),
+                    offset=spot.offset,
+                    loops=(),
+                    guards=state.guards,
+                    order=len(self.record.accesses) + len(self.record.operations),
+                    choice=self._choosing,
+                    volatile=argument.volatile,
+                    manual=manual,
+                    unresolved=unresolved,
+                    process=self.process,
+                    array_bytes=argument.array_bytes,
+                    covers=spot.covers,
+                ),
+                self.open,
+            )
+        )
+
+    def _lost_access(self, spot: LostSpot, direction: str, place: Place, state: State) -> None:
+        """An access whose argument is known to be one, but whose address is lost, is told as unresolved."""
+        if spot.argument is None or self.scouting:
+            return
+        kept = MemorySpot(spot.argument, spot.depends, 1, UnknownType(""))
+        self._access(kept, direction, place, state)
+        access, loops = self.record.accesses[-1]
+        self.record.accesses[-1] = (replace(access, unresolved=spot.reason), loops)
+
+    def stream_operation(self, spot: Spot, what: str, place: Place, state: State, *, blocking: bool = True) -> None:
+        """One read, write or test of a FIFO."""
+        if self.scouting:
+            return
+        match spot:
+            case LocalSpot():
+                name = self.stream_name(spot)
+                steps = [step for step in spot.path if isinstance(step, Form)]
+                self.record.operations.append(
+                    (
+                        StreamOperation(
+                            place=place,
+                            chain=self.frame.chain,
+                            function=self.process_name(),
+                            stream=name,
+                            operation="read" if what == "read" else "write" if what == "write" else "test",
+                            element=self._stream_index(spot, steps),
+                            blocking=blocking,
+                            loops=(),
+                            guards=state.guards,
+                            order=len(self.record.accesses) + len(self.record.operations),
+                            process=self.process,
+                            choice=self._choosing,
+                        ),
+                        self.open,
+                    )
+                )
+            case ChoiceSpot():
+                for condition, arm in spot.arms:
+                    self._choosing = Choice(spot.selector, spot.place, alternatives(spot))
+                    self.stream_operation(
+                        arm, what, place, state.under(condition, spot.place, self.open), blocking=blocking
+                    )
+                    self._choosing = None
+            case _:
+                return
+
+    def process_name(self) -> str:
+        """The function that a stream operation is told under: the outermost that is no helper of the dataflow region."""
+        return self.frame.function.name
+
+    def stream_name(self, spot: LocalSpot) -> str:
+        variable = self.variable_name(spot.root)
+        return ".".join([variable, *(step for step in spot.path if isinstance(step, str))])
+
+    def variable_name(self, root: Root) -> str:
+        return self.names.get(root, root[0].rsplit("@", 1)[-1])
+
+    @property
+    def names(self) -> dict[Root, str]:
+        return self._names
+
+    def _stream_index(self, spot: LocalSpot, steps: list[Form]) -> Form | None:
+        if not steps:
+            return None
+        kind = self.types.get(spot.root)
+        index = ZERO
+        for step in steps:
+            while isinstance(kind, ReferenceType | PointerType):
+                kind = kind.to
+            size = kind.count if isinstance(kind, ArrayType) and kind.count else 1
+            index = index * size + step
+            kind = kind.element if isinstance(kind, ArrayType) else None
+        return index
+
+    # ------------------------------------------------------------------------------------------- statements
+
+    def run(self, statement: Statement, state: State) -> Flow:
+        """Follows one statement; ``state`` is used up."""
+        self.step()
+        match statement:
+            case Block(body=body):
+                return self.run_all(body, state)
+            case Declare(variable=variable):
+                self.declare(variable, state)
+                return Flow(state)
+            case Evaluate(expression=expression):
+                self.value(expression, state)
+                return Flow(state)
+            case If():
+                return self._if(statement, state)
+            case Loop():
+                return self.loop(statement, state)
+            case Switch():
+                return self._switch(statement, state)
+            case Leave(how="break"):
+                return Flow(None, breaks=[state])
+            case Leave(how="continue"):
+                return Flow(None, continues=[state])
+            case Leave(place=place):
+                self.notes.append((place, "a goto is not followed"))
+                return Flow(state)
+            case Return(value=None):
+                return Flow(None, returns=[(state, NOTHING)])
+            case Return(value=expression):
+                assert expression is not None
+                value = self.returned(expression, state)
+                return Flow(None, returns=[(state, value)])
+            case Lost(reason=reason, place=place):
+                self.notes.append((place, reason))
+                return Flow(state)
+
+    def run_all(self, body: Sequence[Statement], state: State) -> Flow:
+        flow = Flow(state)
+        for statement in body:
+            if flow.next is None:
+                break
+            part = self.run(statement, flow.next)
+            flow.take(part)
+            flow.next = part.next
+        return flow
+
+    def _if(self, statement: If, state: State) -> Flow:
+        flow = Flow(None)
+        first = self.run_all(statement.initial, state)
+        if first.next is None:
+            return first
+        state = first.next
+        condition = self.condition(statement.condition, state)
+        if condition.known is not None and not self.scouting:
+            if condition.known:
+                return self.run(statement.yes, state)
+            return self.run(statement.no, state) if statement.no is not None else Flow(state)
+        place = statement.condition.place
+        inverse = negation(condition)
+        yes = self.run(statement.yes, self._under(state, condition, place))
+        no = Flow(self._under(state, inverse, place))
+        if statement.no is not None:
+            no = self.run(statement.no, self._under(state, inverse, place))
+        flow.take(yes)
+        flow.take(no)
+        if yes.next is None and yes.breaks + yes.returns and no.next is not None:
+            no.next.guards = _leaving(no.next.guards, len(state.guards))
+        if no.next is None and no.breaks + no.returns and yes.next is not None:
+            yes.next.guards = _leaving(yes.next.guards, len(state.guards))
+        flow.next = self.join(yes.next, no.next, place)
+        return flow
+
+    def _under(self, state: State, condition: Form, place: Place) -> State:
+        """The state in a branch; a scouting run goes into dead ones, too."""
+        return state.under(condition, place, self.open)
+
+    def join(self, first: State | None, second: State | None, place: Place) -> State | None:
+        """Where two paths meet. In a scouting run, paths that a known condition parts still meet."""
+        return joined(first, second, place)
+
+    def _switch(self, statement: Switch, state: State) -> Flow:
+        flow = Flow(None)
+        subject = self.number(statement.subject, state)
+        place = statement.subject.place
+        falling: State | None = None
+        rest: State | None = state
+        ended: list[State] = []
+        default_at = next((i for i, case in enumerate(statement.cases) if None in case.values), None)
+        misses: State | None = None
+        for at, case in enumerate(statement.cases):
+            entering: State | None = None
+            if rest is not None:
+                if at == default_at:
+                    condition = self._default_condition(subject, statement, rest)
+                else:
+                    condition = ZERO
+                    for value in case.values:
+                        if value is not None:
+                            hit = equal(subject, self.number(value, rest))
+                            condition = _or(condition, hit)
+                if self.scouting or condition.known != 0:
+                    entering = rest.under(condition, place, self.open)
+                if condition.known == 1 and not self.scouting:
+                    rest = None
+                elif at != len(statement.cases) - 1 or default_at is None:
+                    rest = rest.under(negation(condition), place, self.open)
+                else:
+                    rest = None if at == default_at else rest.under(negation(condition), place, self.open)
+            begin = self.join(entering, falling, place)
+            if begin is None:
+                continue
+            part = self.run_all(case.body, begin)
+            flow.continues += part.continues
+            flow.returns += part.returns
+            ended += part.breaks
+            falling = part.next
+        if default_at is None or default_at != len(statement.cases) - 1:
+            misses = rest if default_at is None else None
+        meets: State | None = self.join(misses, falling, place) if misses is not None else falling
+        for end in reversed(ended):
+            meets = self.join(end, meets, place)
+        flow.next = meets
+        return flow
+
+    def _default_condition(self, subject: Form, statement: Switch, state: State) -> Form:
+        """What is left for ``default``: none of the labels."""
+        condition = ONE
+        from beatwise.model.form import both
+
+        for case in statement.cases:
+            for value in case.values:
+                if value is not None:
+                    condition = both(condition, negation(equal(subject, self.number(value, state))))
+        return condition
+
+    # ------------------------------------------------------------------------------- provided by the other parts
+
+    def value(self, expression: Expression, state: State) -> Value:
+        raise NotImplementedError
+
+    def number(self, expression: Expression, state: State) -> Form:
+        """The expression as a form; what is no number only depends."""
+        value = self.value(expression, state)
+        match value:
+            case Number(form):
+                return form
+            case Pointer(spot):
+                return _address(spot)
+            case Record(parts):
+                return depending(*(part.form for part in parts.values() if isinstance(part, Number)))
+            case Closure():
+                return ONE
+
+    def condition(self, expression: Expression, state: State) -> Form:
+        """1 where the expression is true."""
+        return truth(self.number(expression, state))
+
+    def returned(self, expression: Expression, state: State) -> Value:
+        raise NotImplementedError
+
+    def declare(self, variable: object, state: State) -> None:
+        raise NotImplementedError
+
+    def loop(self, statement: Loop, state: State) -> Flow:
+        raise NotImplementedError
+
+    _names: dict[Root, str]
+
+
+def _or(left: Form, right: Form) -> Form:
+    from beatwise.model.form import either
+
+    return either(left, right)
+
+
+def _leaving(guards: tuple[Guard, ...], since: int) -> tuple[Guard, ...]:
+    """The guards after ``since`` hold because the loop or function has not been left."""
+    return (*guards[:since], *(replace(guard, leaves=True) for guard in guards[since:]))
+
+
+def _address(spot: Spot) -> Form:
+    """A pointer as a truth value or an unknown number: never null where it points to something."""
+    match spot:
+        case MemorySpot() | LocalSpot():
+            return ONE
+        case ChoiceSpot():
+            return spot.selector
+        case LostSpot():
+            return depending(spot.depends)
+
+
+def alternatives(choice: ChoiceSpot) -> tuple[str, ...]:
+    """The arguments or variables among which is chosen."""
+    names: list[str] = []
+    for _, arm in choice.arms:
+        name = arm.argument if isinstance(arm, MemorySpot) else arm.root[0] if isinstance(arm, LocalSpot) else "?"
+        if name and name not in names:
+            names.append(name)
+    return tuple(names)

@@ -1,0 +1,327 @@
+"""What every variable holds at one point of the execution, and under which conditions that point is reached."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Mapping
+
+from beatwise.model.access import Guard
+from beatwise.model.form import ONE, Form, Symbol, both, either, lookup, negation, number, select, substitute
+from beatwise.model.place import Place
+from beatwise.trace.values import (
+    ChoiceSpot,
+    Closure,
+    LocalSpot,
+    LostSpot,
+    MemorySpot,
+    Number,
+    Path,
+    Pointer,
+    Record,
+    Root,
+    Spot,
+    Value,
+    choose,
+    depending,
+    picked,
+)
+
+ANY = "*"  #: in a cell's path: some element, no one knows which
+Cells = Mapping[Path, Value]
+
+
+class Filled:
+    """A local array that one loop fills: element ``index`` (a form in ``counter``) holds ``value``."""
+
+    __slots__ = ("counter", "index", "value")
+
+    def __init__(self, counter: Symbol, index: Form, value: Form) -> None:
+        self.counter, self.index, self.value = counter, index, value
+
+
+class State:
+    """Cells by variable; ``guards`` is the condition of being here. Copies share what they do not change."""
+
+    __slots__ = ("cells", "filled", "guards", "written")
+
+    def __init__(self, cells: dict[Root, Cells], guards: tuple[Guard, ...]) -> None:
+        self.cells, self.guards = cells, guards
+        self.filled: dict[Root, Filled] = {}
+        self.written: set[tuple[Root, Path]] | None = None  #: what a scouting run has changed
+
+    def copy(self) -> State:
+        twin = State(dict(self.cells), self.guards)
+        twin.filled, twin.written = dict(self.filled), self.written
+        return twin
+
+    def under(self, condition: Form, place: Place, loops: tuple[int, ...]) -> State:
+        """A copy in which ``condition`` is known to hold."""
+        twin = self.copy()
+        if condition.known is None:
+            twin.guards = (*self.guards, Guard(condition, place, loops))
+        return twin
+
+    def become(self, other: State) -> None:
+        """Takes over what the other holds."""
+        self.cells, self.guards, self.filled, self.written = other.cells, other.guards, other.filled, other.written
+
+    # ----------------------------------------------------------------------------------------------- reading
+
+    def read(self, spot: LocalSpot, place: Place) -> Value | None:
+        """What the spot holds; None where nothing has been stored there."""
+        cells = self.cells.get(spot.root)
+        if not cells:
+            return None
+        path = spot.path
+        exact = cells.get(path)
+        if exact is not None:
+            return exact
+        if any(isinstance(step, Form) for step in path):
+            return self._read_some(spot, cells, path, place)
+        parts = {key[len(path) :]: value for key, value in cells.items() if key[: len(path)] == path}
+        if parts:
+            return Record(parts)
+        return self._read_summary(spot, cells, path)
+
+    def _read_some(self, spot: LocalSpot, cells: Cells, path: Path, place: Place) -> Value | None:
+        """An element whose index is not a plain number."""
+        filled = self.filled.get(spot.root)
+        if filled is not None and len(path) == 1 and isinstance(path[0], Form):
+            value = filled_element(filled, path[0])
+            if value is not None:
+                return Number(value)
+        at = next(i for i, step in enumerate(path) if isinstance(step, Form))
+        index = path[at]
+        assert isinstance(index, Form)
+        found: dict[int, Value] = {}
+        hazy = False
+        for key, value in cells.items():
+            if len(key) <= at or key[:at] != path[:at]:
+                continue
+            step = key[at]
+            if step == ANY:
+                hazy = True
+            elif isinstance(step, Form) and step.known is not None:
+                inner = self.read(LocalSpot(spot.root, (*path[:at], step, *path[at + 1 :]), spot.type), place)
+                if inner is not None:
+                    found[step.known] = inner
+        numbers = {at: value.form.known for at, value in found.items() if isinstance(value, Number)}
+        if found and not hazy and len(numbers) == len(found) and None not in numbers.values():
+            if sorted(numbers) == list(range(len(numbers))):
+                return Number(lookup(tuple(value or 0 for _, value in sorted(numbers.items())), index))
+        pointers = {at: value.spot for at, value in found.items() if isinstance(value, Pointer)}
+        if pointers and not hazy:
+            return Pointer(picked(index, pointers, place))
+        summary = self._read_summary(spot, cells, path)
+        pieces = [value.form for value in found.values() if isinstance(value, Number)]
+        if isinstance(summary, Number):
+            pieces.append(summary.form)
+        elif summary is not None and not pieces:
+            return summary
+        return Number(depending(index, *pieces)) if pieces else None
+
+    def _read_summary(self, spot: LocalSpot, cells: Cells, path: Path) -> Value | None:
+        """What some element may hold, or what a part of a value that is known only as a whole depends on."""
+        pieces: list[Form] = []
+        for key, value in cells.items():
+            if covers(key, path):
+                if len(key) == len(path) and not isinstance(value, Number):
+                    return value
+                pieces += [part for part in forms_in(value)]
+        if not pieces:
+            return None
+        indices = [step for step in path if isinstance(step, Form)]
+        return Number(depending(*indices, *pieces))
+
+    # ----------------------------------------------------------------------------------------------- writing
+
+    def write(self, spot: LocalSpot, value: Value) -> None:
+        """Stores; an element that is not known exactly joins what some element may hold."""
+        path = spot.path
+        cells = dict(self.cells.get(spot.root, {}))
+        fuzzy = tuple(ANY if isinstance(step, Form) and step.known is None else step for step in path)
+        if self.written is not None:
+            self.written.add((spot.root, fuzzy))
+        self.filled.pop(spot.root, None)
+        if fuzzy != path:
+            self._write_some(cells, fuzzy, value)
+        else:
+            for key in [key for key in cells if key[: len(path)] == path]:
+                del cells[key]
+            if isinstance(value, Record):
+                for rest, part in value.parts.items():
+                    cells[(*path, *rest)] = part
+            else:
+                cells[path] = value
+        self.cells[spot.root] = cells
+
+    def _write_some(self, cells: dict[Path, Value], fuzzy: Path, value: Value) -> None:
+        merged: list[Form] = list(forms_in(value))
+        for key in [key for key in cells if covers(fuzzy, key)]:
+            old = cells.pop(key)
+            merged += forms_in(old)
+        if isinstance(value, Number | Record):
+            cells[fuzzy] = Number(depending(*merged))
+        else:
+            cells[fuzzy] = value
+
+    def forget(self, root: Root) -> None:
+        """The variable begins anew."""
+        self.cells.pop(root, None)
+        self.filled.pop(root, None)
+
+    def substituted(self, values: Mapping[Symbol, Form], memo: dict[Symbol, Form]) -> State:
+        """The state with symbols replaced."""
+        twin = State({}, self.guards)
+        twin.written = self.written
+        for root, cells in self.cells.items():
+            twin.cells[root] = {path: replaced(value, values, memo) for path, value in cells.items()}
+        for root, filled in self.filled.items():
+            if filled.counter not in values:
+                twin.filled[root] = Filled(
+                    filled.counter, substitute(filled.index, values, memo), substitute(filled.value, values, memo)
+                )
+        return twin
+
+
+def filled_element(filled: Filled, index: Form) -> Form | None:
+    """The element at ``index`` of an array that a loop has filled in steps of one."""
+    step = filled.index.coefficient(filled.counter)
+    if step is None or step.known != 1:
+        return None
+    return substitute(filled.value, {filled.counter: index - filled.index.without(filled.counter)})
+
+
+def covers(wide: Path, narrow: Path) -> bool:
+    """Whether a cell at ``wide`` may hold (or hold a whole that holds) what lies at ``narrow``."""
+    if len(wide) > len(narrow):
+        return False
+    for a, b in zip(wide, narrow, strict=False):
+        if a == b:
+            continue
+        loose_a = a == ANY
+        loose_b = b == ANY or (isinstance(b, Form) and b.known is None)
+        if not ((loose_a and (isinstance(b, Form) or b == ANY)) or (loose_b and (isinstance(a, Form) or a == ANY))):
+            return False
+    return True
+
+
+def forms_in(value: Value) -> Iterator[Form]:
+    """The forms a value is made of."""
+    match value:
+        case Number(form):
+            yield form
+        case Record(parts):
+            for part in parts.values():
+                yield from forms_in(part)
+        case Pointer(spot):
+            yield from forms_of_spot(spot)
+        case Closure():
+            return
+
+
+def forms_of_spot(spot: Spot) -> Iterator[Form]:
+    match spot:
+        case MemorySpot():
+            yield spot.offset
+        case LocalSpot():
+            yield from (step for step in spot.path if isinstance(step, Form))
+        case ChoiceSpot():
+            yield spot.selector
+        case LostSpot():
+            yield spot.depends
+
+
+def replaced(value: Value, values: Mapping[Symbol, Form], memo: dict[Symbol, Form]) -> Value:
+    """The value with symbols replaced."""
+    match value:
+        case Number(form):
+            new = substitute(form, values, memo)
+            return value if new is form else Number(new)
+        case Pointer(spot):
+            return Pointer(replaced_spot(spot, values, memo))
+        case Record(parts):
+            return Record({path: replaced(part, values, memo) for path, part in parts.items()})
+        case Closure():
+            return value
+
+
+def replaced_spot(spot: Spot, values: Mapping[Symbol, Form], memo: dict[Symbol, Form]) -> Spot:
+    match spot:
+        case MemorySpot():
+            return MemorySpot(
+                spot.argument, substitute(spot.offset, values, memo), spot.unit_bytes, spot.type, spot.part_bytes, spot.covers
+            )
+        case LocalSpot():
+            path = tuple(substitute(step, values, memo) if isinstance(step, Form) else step for step in spot.path)
+            return LocalSpot(spot.root, path, spot.type)
+        case ChoiceSpot():
+            arms = tuple((substitute(c, values, memo), replaced_spot(arm, values, memo)) for c, arm in spot.arms)
+            return ChoiceSpot(arms, substitute(spot.selector, values, memo), spot.place)
+        case LostSpot():
+            return LostSpot(spot.reason, substitute(spot.depends, values, memo), spot.argument)
+
+
+def joined(first: State | None, second: State | None, place: Place) -> State | None:
+    """The state where two paths meet: what differs is chosen by the condition that parted them."""
+    if first is None or second is None:
+        return first if second is None else second
+    if first is second:
+        return first
+    split = 0
+    while split < min(len(first.guards), len(second.guards)) and first.guards[split] is second.guards[split]:
+        split += 1
+    if split == len(first.guards) or split == len(second.guards):
+        condition, guards = parted(first, second, split)
+    else:
+        condition = first.guards[split].condition
+        rest_first = conjunction(first.guards[split + 1 :])
+        rest_second = conjunction(second.guards[split + 1 :])
+        other = second.guards[split].condition
+        guards = first.guards[:split]
+        reached = select(condition, rest_first, rest_second)
+        if other != negation(condition):
+            reached = either(both(condition, rest_first), both(other, rest_second))
+        if reached.known is None:
+            parting = first.guards[split]
+            left = any(guard.leaves for guard in (*first.guards[split:], *second.guards[split:]))
+            guards = (*guards, Guard(reached, parting.place, parting.loops, left))
+    result = State({}, guards)
+    result.written = first.written
+    for root in first.cells.keys() | second.cells.keys():
+        a, b = first.cells.get(root), second.cells.get(root)
+        if a is b and a is not None:
+            result.cells[root] = a
+        elif a is None or b is None:
+            result.cells[root] = a if a is not None else b if b is not None else {}
+        else:
+            cells: dict[Path, Value] = {}
+            for path in [*a, *(path for path in b if path not in a)]:
+                left = a.get(path, b.get(path) if path not in a and _summary(path) else None)
+                right = b.get(path, a.get(path) if path not in b and _summary(path) else None)
+                cells[path] = choose(condition, left, right, place)
+            result.cells[root] = cells
+    for root, filled in first.filled.items():
+        if second.filled.get(root) is filled:
+            result.filled[root] = filled
+    return result
+
+
+def _summary(path: Path) -> bool:
+    return ANY in path
+
+
+def parted(first: State, second: State, split: int) -> tuple[Form, tuple[Guard, ...]]:
+    """Two states of which one's path holds the other's: the longer one's further conditions decide."""
+    if len(first.guards) > len(second.guards):
+        return conjunction(first.guards[split:]), first.guards[:split]
+    if len(second.guards) > len(first.guards):
+        return negation(conjunction(second.guards[split:])), first.guards[:split]
+    return ONE, first.guards
+
+
+def conjunction(guards: tuple[Guard, ...]) -> Form:
+    """1 where all hold."""
+    result = number(1)
+    for guard in guards:
+        result = both(result, guard.condition)
+    return result

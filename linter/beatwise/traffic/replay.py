@@ -1,0 +1,260 @@
+"""Walks through a loop nest number by number, for the accesses that no formula covers.
+
+Loops run as the source says: counters, carried variables, exits, guards. What only the data knows is drawn at random, the
+same draw for the same iteration. The walk stops after ``STEPS_AT_MOST`` iterations; what it has seen by then stands for all.
+"""
+
+from __future__ import annotations
+
+from collections import Counter
+from collections.abc import Mapping
+from dataclasses import dataclass, field
+
+from beatwise.model.access import Access, LoopInstance
+from beatwise.model.form import Form, Symbol
+from beatwise.traffic.compiled import Values, compiled
+
+STEPS_AT_MOST = 12_000  #: iterations of innermost loops that are walked through for one access
+SCATTER = 1 << 22  #: data that has no known range is drawn from this many values
+
+
+class Enough(Exception):
+    """The walk has seen enough; raised and caught in this file."""
+
+
+@dataclass
+class Seen:
+    """What the walk saw: bytes between one access and the next, and the runs they make."""
+
+    element_bytes: int
+    steps: Counter[int] = field(default_factory=Counter)
+    inner_steps: Counter[int] = field(default_factory=Counter)  #: within the innermost loop
+    executions: int = 0
+    runs: int = 0
+    whole: bool = True  #: the walk came to its end
+    last_run: int = 0
+    _next: int | None = None
+    _last: int | None = None
+
+    def take(self, offset: int, inner: bool) -> None:
+        """One execution, at ``offset``; ``inner``: in the same round of the innermost loop as the one before."""
+        self.executions += 1
+        if self._last is not None:
+            step = offset - self._last
+            self.steps[step] += 1
+            if inner:
+                self.inner_steps[step] += 1
+        if offset == self._next:
+            self.last_run += 1
+        else:
+            self.runs += 1
+            self.last_run = 1
+        self._last, self._next = offset, offset + self.element_bytes
+
+    def take_many(self, offset: int, stride: int, many: int, inner: bool) -> None:
+        """``many`` executions from ``offset`` on, ``stride`` bytes apart."""
+        if many <= 0:
+            return
+        self.take(offset, inner)
+        if many == 1:
+            return
+        self.executions += many - 1
+        self.steps[stride] += many - 1
+        self.inner_steps[stride] += many - 1
+        if stride == self.element_bytes:
+            self.last_run += many - 1
+        else:
+            self.runs += many - 1
+            self.last_run = 1
+        self._last = offset + stride * (many - 1)
+        self._next = self._last + self.element_bytes
+
+    @property
+    def mean_run(self) -> float | None:
+        """Elements a run, the unfinished last one left out where the walk was cut short."""
+        if not self.runs:
+            return None
+        if not self.whole and self.runs > 1:
+            return (self.executions - self.last_run) / (self.runs - 1)
+        return self.executions / self.runs
+
+
+class Walker:
+    """One walk. ``trips_of`` gives the trips of loops whose count no form tells."""
+
+    def __init__(self, access: Access, sizes: Mapping[Symbol, int], trips_of: Mapping[int, int], rows: Mapping[Symbol, int]) -> None:
+        self.access, self.trips_of, self.rows = access, trips_of, rows
+        self.values: Values = _Drawn(self)
+        self.values.update(sizes)
+        self.seen = Seen(access.element_bytes)
+        self.steps = 0
+        self.guards = [g.condition for g in access.guards if not g.leaves or not _by_data(g.condition)]
+        self.free = [g for g in self.guards if not _by_data(g)]
+        self.drawn = [g for g in self.guards if _by_data(g)]
+        self.coins = {symbol for g in self.drawn for symbol in _comparisons(g)}
+        self.by_loop = _drawn_in(access)
+
+    def walk(self) -> Seen:
+        try:
+            self._level(0)
+        except Enough:
+            self.seen.whole = False
+        return self.seen
+
+    def _level(self, level: int) -> None:
+        loops = self.access.loops
+        if level == len(loops):
+            self._execute(False)
+            return
+        loop = loops[level]
+        values = self.values
+        firsts = [(r.symbol, compiled(r.first)) for r in loop.recurrences]
+        nexts = [(r.symbol, compiled(r.next)) for r in loop.recurrences]
+        for symbol, value in [(symbol, first(values)) for symbol, first in firsts]:
+            values[symbol] = value
+        self._redraw(loop)
+        values[loop.counter] = 0
+        trips = self._trips(loop)
+        innermost = level == len(loops) - 1
+        if innermost and self._regular(loop) and trips > 2:
+            self._stretch(loop, trips)
+            return
+        until = [compiled(form) for form in loop.until if not _by_data(form)]
+        exits = [compiled(form) for form in loop.exits if not _by_data(form)]
+        for k in range(trips):
+            values[loop.counter] = k
+            if k:
+                self._redraw(loop)
+            if any(test(values) for test in until):
+                break
+            self.steps += 1
+            if self.steps > STEPS_AT_MOST:
+                raise Enough
+            if innermost:
+                self._execute(k > 0)
+            else:
+                self._level(level + 1)
+            if any(test(values) for test in exits):
+                break
+            for symbol, value in [(symbol, following(values)) for symbol, following in nexts]:
+                values[symbol] = value
+
+    def _trips(self, loop: LoopInstance) -> int:
+        if loop.number in self.trips_of:
+            return self.trips_of[loop.number]
+        if loop.trips is None:
+            return STEPS_AT_MOST
+        return compiled(loop.trips)(self.values)
+
+    def _regular(self, loop: LoopInstance) -> bool:
+        if loop.recurrences or loop.until or loop.exits or self.drawn:
+            return False
+        if any(loop.counter in g.leaves() for g in self.free) or loop.number in self.by_loop:
+            return False
+        step = self.access.offset.coefficient(loop.counter)
+        inside = self.access.offset.without(loop.counter).leaves()
+        return step is not None and loop.counter not in step.leaves() and loop.counter not in inside
+
+    def _stretch(self, loop: LoopInstance, trips: int) -> None:
+        self.steps += 1
+        if self.steps > STEPS_AT_MOST:
+            raise Enough
+        if not all(compiled(g)(self.values) for g in self.free):
+            return
+        start = compiled(self.access.offset)(self.values)
+        self.values[loop.counter] = 1
+        stride = compiled(self.access.offset)(self.values) - start
+        self.seen.take_many(start, stride, trips, False)
+
+    def _execute(self, inner: bool) -> None:
+        values = self.values
+        for guard in self.free:
+            if not compiled(guard)(values):
+                return
+        for guard in self.drawn:
+            for coin in self.coins:
+                if coin not in values:
+                    values[coin] = self.flip(coin)
+            if not compiled(guard)(values):
+                return
+        self.seen.take(compiled(self.access.offset)(values), inner)
+
+    def _redraw(self, loop: LoopInstance) -> None:
+        """A new iteration: what was drawn in the one before is drawn anew."""
+        values = self.values
+        for symbol in self.by_loop.get(loop.number, ()):
+            values.pop(symbol, None)
+        for coin in self.coins:
+            values.pop(coin, None)
+
+    def flip(self, symbol: Symbol) -> int:
+        """An even chance, the same for the same iteration."""
+        return (self._mixed(symbol) >> 13) & 1
+
+    def draw(self, symbol: Symbol) -> int:
+        """A value for what only the data knows."""
+        if symbol in self.rows and symbol.at is not None:
+            return compiled(symbol.at)(self.values) * self.rows[symbol] >> 8
+        low = symbol.low if symbol.low is not None else 0
+        high = symbol.high if symbol.high is not None else SCATTER
+        low, high = max(low, -SCATTER if low < 0 and high < 0 else 0), min(high, SCATTER)
+        return low + self._mixed(symbol) % max(1, high - low + 1)
+
+    def _mixed(self, symbol: Symbol) -> int:
+        state = symbol.number * 0x9E3779B97F4A7C15
+        for loop in self.access.loops:
+            state = (state ^ self.values.get(loop.counter, 0)) * 0xBF58476D1CE4E5B9 & 0xFFFFFFFFFFFFFFFF
+            state ^= state >> 29
+        return state
+
+
+class _Drawn(dict[Symbol, int]):
+    """The values of symbols; one that is asked for and not there is drawn."""
+
+    def __init__(self, walker: Walker) -> None:
+        super().__init__()
+        self._walker = walker
+
+    def __missing__(self, symbol: Symbol) -> int:
+        value = self[symbol] = self._walker.draw(symbol)
+        return value
+
+
+def _by_data(form: Form) -> bool:
+    return any(symbol.kind in ("data", "unknown") for symbol in form.leaves())
+
+
+def _comparisons(form: Form) -> set[Symbol]:
+    """The tests on data that a condition is made of."""
+    found: set[Symbol] = set()
+    for symbol in form.symbols():
+        if symbol.kind != "operation":
+            if symbol.kind in ("data", "unknown"):
+                found.add(symbol)
+        elif symbol.name in ("and?", "or?", "not", "select"):
+            for operand in symbol.operands:
+                found |= _comparisons(operand)
+        elif _by_data(Form({(symbol,): 1})):
+            found.add(symbol)
+    return found
+
+
+def _drawn_in(access: Access) -> dict[int, set[Symbol]]:
+    """The data symbols that a new iteration of each loop draws anew."""
+    forms = [access.offset, *(g.condition for g in access.guards)]
+    for loop in access.loops:
+        forms += [*loop.until, *loop.exits, *(r.next for r in loop.recurrences), *(r.first for r in loop.recurrences)]
+        if loop.trips is not None:
+            forms.append(loop.trips)
+    found: dict[int, set[Symbol]] = {}
+    numbers = [loop.number for loop in access.loops]
+    for form in forms:
+        for symbol in form.leaves():
+            if symbol.kind in ("data", "unknown"):
+                for loop in numbers:
+                    if loop in symbol.loops or any(loop in other.loops for other in symbol.depends):
+                        found.setdefault(loop, set()).add(symbol)
+    for at, loop in enumerate(numbers):  # an outer iteration draws the inner data anew, too
+        for inner in numbers[at + 1 :]:
+            found.setdefault(loop, set()).update(found.get(inner, ()))
+    return found

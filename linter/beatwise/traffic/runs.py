@@ -1,0 +1,385 @@
+"""How an access walks through its argument: its pattern, its step, and the mean length of its runs.
+
+By formula where the address is linear in the loop counters and the loops are rectangular; else by walking through the
+nest (``replay``). Sizes that nobody knows are taken as ``ASSUMED_TRIPS``, and the basis says so.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass
+from math import gcd
+
+from beatwise.model.access import Access, LoopInstance
+from beatwise.model.form import Form, Symbol, bounds, number
+from beatwise.model.traffic import Basis, Pattern, Walk
+from beatwise.traffic.compiled import compiled
+from beatwise.traffic.replay import Walker
+
+ASSUMED_TRIPS = 1024  #: of a loop about which nothing is known
+EVEN_CHANCE = 0.5  #: how often data lets a guarded access run, when nothing more is known
+START_MULTIPLE = 4096  #: an argument is taken to start at a multiple of this (common practice, no source)
+_GRAVITY: tuple[Basis, ...] = ("constant", "given", "tripcount", "assumed", "data")
+
+
+@dataclass(frozen=True, slots=True)
+class Trips:
+    """How often a loop runs: a number, the form behind it where it is exact, and where it is from."""
+
+    count: int
+    form: Form | None
+    basis: Basis
+    loop: LoopInstance
+
+
+def walk(access: Access, given: Mapping[str, int]) -> Walk:
+    """The walk of one access.
+
+    ``given`` are sizes by parameter name. A run's length in elements follows from the trips of the loops whose steps join up;
+    an access that data guards is expected to run in half of the cases, so that its runs are 1/(1 - 1/2) = 2 elements.
+    """
+    if access.unresolved is not None:
+        return Walk("unresolved", None, None, "constant", None, access.unresolved)
+    sizes = {symbol: _size(symbol, given) for symbol in _parameters(access)}
+    trips = [_trips(loop, sizes) for loop in access.loops]
+    lost = _lost(access)
+    if lost is not None:
+        return Walk("unresolved", None, None, _worst(t.basis for t in trips), None, lost)
+    chosen = access.choice is not None and _by_data(access.choice.selector)
+    found = _by_formula(access, trips, sizes)
+    if found is None:
+        found = _by_walking(access, trips, sizes)
+    if chosen:
+        return _steered(access, found)
+    return found
+
+
+# ------------------------------------------------------------------------------------------------------- sizes
+
+
+def _parameters(access: Access) -> set[Symbol]:
+    forms = [access.offset, *(guard.condition for guard in access.guards)]
+    for loop in access.loops:
+        forms += [*loop.until, *loop.exits, *(r.next for r in loop.recurrences), *(r.first for r in loop.recurrences)]
+        if loop.trips is not None:
+            forms.append(loop.trips)
+    return {symbol for form in forms for symbol in form.leaves() if symbol.kind == "parameter"}
+
+
+def _size(symbol: Symbol, given: Mapping[str, int]) -> int:
+    if symbol.name in given:
+        return given[symbol.name]
+    if symbol.low is not None and symbol.low == symbol.high:
+        return symbol.low
+    return ASSUMED_TRIPS if symbol.high is None else min(ASSUMED_TRIPS, symbol.high)
+
+
+def _is_given(symbol: Symbol) -> bool:
+    return symbol.low is not None and symbol.low == symbol.high
+
+
+def _trips(loop: LoopInstance, sizes: Mapping[Symbol, int]) -> Trips:
+    """The loop's trips as a number, for a nest whose trips do not change from one round to the next."""
+    form = loop.trips
+    if form is None:
+        if loop.tripcount is not None:
+            return Trips(loop.tripcount, None, "tripcount", loop)
+        return Trips(ASSUMED_TRIPS, None, "assumed", loop)
+    leaves = form.leaves()
+    if any(symbol.kind in ("data", "unknown", "carried") for symbol in leaves):
+        low, high = bounds(form)
+        if loop.tripcount is not None:
+            return Trips(loop.tripcount, form, "tripcount", loop)
+        return Trips(min(ASSUMED_TRIPS, high) if high is not None and high > 0 else ASSUMED_TRIPS, form, "assumed", loop)
+    unknown = [symbol for symbol in leaves if symbol.kind == "parameter" and not _is_given(symbol)]
+    if unknown and loop.tripcount is not None:
+        return Trips(loop.tripcount, form, "tripcount", loop)
+    if any(symbol.kind == "counter" for symbol in leaves):
+        return Trips(-1, form, "assumed" if unknown else "constant", loop)
+    count = compiled(form)(dict(sizes))
+    if unknown:
+        high = bounds(form)[1]
+        simple = len(leaves) == 1 and len(form.terms) <= 2
+        return Trips(count if simple or high is not None else ASSUMED_TRIPS, form, "assumed", loop)
+    given = any(symbol.kind == "parameter" for symbol in leaves)
+    return Trips(max(0, count), form, "given" if given else "constant", loop)
+
+
+def _worst(bases: Sequence[Basis] | object) -> Basis:
+    worst: Basis = "constant"
+    for basis in bases:  # type: ignore[attr-defined]
+        if _GRAVITY.index(basis) > _GRAVITY.index(worst):
+            worst = basis
+    return worst
+
+
+def _by_data(form: Form) -> bool:
+    return any(symbol.kind == "data" for symbol in form.leaves())
+
+
+def _lost(access: Access) -> str | None:
+    """Why the address can't be told, when it hangs on something that could not be followed."""
+    numbers = {loop.number for loop in access.loops}
+    for symbol in access.offset.leaves():
+        if symbol.kind == "unknown" and symbol.reason and not _by_data(access.offset):
+            if symbol.loops and not numbers.intersection(symbol.loops):
+                continue
+            if not symbol.loops and not symbol.depends and symbol.place is None:
+                return symbol.reason
+            if symbol.reason == "a variable that was never set" and not symbol.depends:
+                return symbol.reason
+            where = f" (line {symbol.place.line})" if symbol.place is not None else ""
+            return f"{symbol.reason}{where}"
+    return None
+
+
+# ------------------------------------------------------------------------------------------------- by formula
+
+
+def _by_formula(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, int]) -> Walk | None:
+    """The walk, when the address is linear in all counters and the nest is a box; None when it is not."""
+    if any(t.loop.until or t.loop.recurrences or t.count < 0 for t in trips):
+        return None
+    if any(any(not _by_data(form) for form in t.loop.exits) for t in trips):
+        return None
+    counters = {t.loop.counter for t in trips}
+    if any(counters & g.condition.leaves() and not _by_data(g.condition) for g in access.guards):
+        return None
+    if any(symbol.kind in ("data", "unknown", "carried") for symbol in access.offset.leaves()):
+        return None
+    strides: list[Form] = []
+    rest = access.offset
+    for t in trips:
+        stride = access.offset.coefficient(t.loop.counter)
+        if stride is None or counters & stride.leaves():
+            return None
+        strides.append(stride)
+        rest = rest.without(t.loop.counter)
+    if counters & rest.leaves():
+        return None
+    if not all(compiled(g.condition)(dict(sizes)) for g in access.guards if not _drawn(g.condition)):
+        return Walk("single", None, None, _worst([t.basis for t in trips]), 0)
+    return _boxed(access, trips, strides, rest, sizes)
+
+
+def _drawn(form: Form) -> bool:
+    return any(symbol.kind in ("data", "unknown", "carried", "counter") for symbol in form.leaves())
+
+
+def _boxed(
+    access: Access, trips: Sequence[Trips], strides: Sequence[Form], rest: Form, sizes: Mapping[Symbol, int]
+) -> Walk:
+    run_form: Form | None = number(access.element_bytes)
+    run = 1
+    whole = True
+    executions = 1
+    pattern: Pattern = "single"
+    step: int | None = None
+    run_basis: list[Basis] = []
+    run_multiple = access.element_bytes
+    start_multiple = gcd(START_MULTIPLE, *(abs(f) for f in rest.terms.values()))
+    for t, stride in zip(reversed(trips), reversed(strides), strict=True):
+        executions *= t.count
+        if t.count == 1 and (t.basis in ("constant", "given")):
+            continue
+        value = compiled(stride)(dict(sizes)) if not _drawn(stride) else None
+        if pattern == "single":
+            pattern, step = _pattern(stride, value, access.element_bytes, t)
+        joins = whole and _joins(stride, value, run_form, run * access.element_bytes, run_basis)
+        if joins:
+            run *= t.count
+            run_basis.append(t.basis)
+            run_form = run_form * t.form if run_form is not None and t.form is not None else None
+            run_multiple *= _multiple(t)
+        else:
+            if whole and run == 1:
+                run_basis.append(t.basis)
+            whole = False
+            start_multiple = gcd(start_multiple, *(abs(f) for f in stride.terms.values())) if stride.terms else start_multiple
+    basis = _worst(run_basis) if run_basis else _worst([t.basis for t in trips])
+    mean: float = float(run)
+    if pattern in ("repeated", "descending") or (pattern == "strided"):
+        mean = 1.0
+    if _guarded(access, trips):
+        mean, basis = min(mean, 1 / (1 - EVEN_CHANCE)) if pattern == "sequential" else 1.0, "data"
+    if access.manual:
+        pattern = "sequential" if pattern == "single" else pattern
+    copied = trips and trips[-1].loop.kind == "copy" and pattern == "single"
+    if copied:
+        pattern, step = "sequential", access.element_bytes
+    return Walk(pattern, step, mean, basis, float(executions), None, start_multiple or START_MULTIPLE, run_multiple)
+
+
+def _pattern(stride: Form, value: int | None, element: int, t: Trips) -> tuple[Pattern, int | None]:
+    if not stride.terms:
+        return "repeated", 0
+    known = stride.known if stride.known is not None else value if all(map(_is_given, stride.leaves())) else None
+    if known == element:
+        return "sequential", element
+    if known == -element:
+        return "descending", -element
+    if known == 0:
+        return "repeated", 0
+    return "strided", known
+
+
+def _joins(stride: Form, value: int | None, run_form: Form | None, run_bytes: int, bases: Sequence[Basis]) -> bool:
+    """Whether the next round of a loop begins where the run of the last one ended."""
+    if run_form is not None and stride == run_form:
+        return True
+    exact = all(basis in ("constant", "given") for basis in bases)
+    exact = exact and all(_is_given(symbol) for symbol in stride.leaves() if symbol.kind == "parameter")
+    return exact and value == run_bytes
+
+
+def _multiple(t: Trips) -> int:
+    """What the trips are known to be a multiple of while the hardware is built."""
+    if t.form is None:
+        return 1
+    if t.form.known is not None:
+        return max(1, t.form.known)
+    content = 0
+    for factor in t.form.terms.values():
+        content = gcd(content, factor)
+    return max(1, abs(content))
+
+
+def _guarded(access: Access, trips: Sequence[Trips]) -> bool:
+    """Whether data decides anew, in the loops that move the access, if it runs."""
+    numbers = {t.loop.number for t in trips}
+    return any(g.by_data and numbers.intersection(_redrawn(g.condition)) for g in access.guards)
+
+
+def _redrawn(form: Form) -> set[int]:
+    return {loop for symbol in form.leaves() if symbol.kind == "data" for loop in symbol.loops}
+
+
+# ------------------------------------------------------------------------------------------------- by walking
+
+
+def _by_walking(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, int]) -> Walk:
+    rows = _rows(trips)
+    fixed = {
+        t.loop.number: t.count
+        for t in trips
+        if t.count >= 0 and (t.form is None or any(s.kind in ("data", "unknown", "carried") for s in t.form.leaves()))
+        and not (t.form is not None and rows.keys() & t.form.leaves())
+        and not _ends_by_itself(t.loop)
+    }  # fmt: skip
+    seen = Walker(access, sizes, fixed, rows).walk()
+    basis = _worst([t.basis for t in trips])
+    if any(_ends_by_itself(t.loop) for t in trips):
+        basis = _worst([t.basis for t in trips if not _ends_by_itself(t.loop)])
+        if any(not _is_given(symbol) for symbol in sizes):
+            basis = "assumed"
+    indirect = _indirect(access, trips)
+    if _guarded(access, trips):
+        basis = "data"
+    mean = seen.mean_run
+    if not seen.executions:
+        return Walk("single", None, None, basis, 0.0)
+    executions = float(seen.executions) if seen.whole and not _guarded(access, trips) else _product(trips)
+    if seen.executions == 1 and seen.whole:
+        return Walk("single", None, 1.0, basis, 1.0)
+    pattern, step = _seen_pattern(seen.inner_steps or seen.steps, access.element_bytes)
+    if seen.inner_steps and mean is not None and mean >= 1.5 and pattern not in ("sequential",):
+        pattern, step = _seen_pattern(seen.steps, access.element_bytes)
+    if indirect:
+        basis = "data" if mean is None or mean < 2 else basis
+        return Walk("indirect", None, mean, basis, executions)
+    start = gcd(START_MULTIPLE, *(abs(f) for f in access.offset.terms.values()))
+    if any(s.kind == "operation" or s.kind == "carried" for s in access.offset.leaves()):
+        start = gcd(start, access.element_bytes)
+    return Walk(pattern, step, mean, basis, executions, None, start, access.element_bytes)
+
+
+def _ends_by_itself(loop: LoopInstance) -> bool:
+    """Whether the walk finds out how often the loop runs: its end hangs on no data."""
+    ends = (*loop.until, *loop.exits)
+    return loop.trips is None and bool(ends) and not any(_drawn_end(form) for form in ends)
+
+
+def _drawn_end(form: Form) -> bool:
+    return any(symbol.kind in ("data", "unknown") for symbol in form.leaves())
+
+
+def _product(trips: Sequence[Trips]) -> float | None:
+    product = 1.0
+    for t in trips:
+        if t.count < 0:
+            return None
+        product *= t.count
+    return product
+
+
+def _seen_pattern(steps: Mapping[int, int], element: int) -> tuple[Pattern, int | None]:
+    total = sum(steps.values())
+    if not total:
+        return "single", None
+    step, times = max(steps.items(), key=lambda item: (item[1], -abs(item[0])))
+    if times * 2 < total or (times * 2 == total and len(steps) > 2):
+        return "irregular", None
+    if step == element:
+        return "sequential", element
+    if step == -element:
+        return "descending", -element
+    if step == 0:
+        return "repeated", 0
+    return ("strided", step) if times * 4 >= total * 3 else ("irregular", None)
+
+
+def _rows(trips: Sequence[Trips]) -> dict[Symbol, int]:
+    """Row pointers: data of which the next one ends a loop that this one begins. Rows are taken to follow each other."""
+    found: dict[Symbol, int] = {}
+    for t in trips:
+        if t.form is None:
+            continue
+        drawn = [s for s in t.form.leaves() if s.kind == "data" and s.at is not None]
+        for first in drawn:
+            for second in drawn:
+                if first is second or first.name != second.name or first.at is None or second.at is None:
+                    continue
+                gap = (second.at - first.at).known
+                if gap is not None and gap > 0:
+                    length = t.count if t.count > 0 else ASSUMED_TRIPS
+                    found[first] = found[second] = length * 256 // gap
+    return found
+
+
+def _indirect(access: Access, trips: Sequence[Trips]) -> bool:
+    """Whether data that changes while the access moves decides its address.
+
+    The first element of a row whose bounds are both data is no index: the row is walked in order.
+    """
+    numbers = [t.loop.number for t in trips]
+    drawn = {s for s in access.offset.leaves() if s.kind == "data"}
+    if not drawn:
+        return False
+    bounds_of_rows: set[Symbol] = set()
+    for t in trips:
+        if t.form is not None:
+            step = access.offset.coefficient(t.loop.counter)
+            if step is not None and step.known:
+                bounds_of_rows |= {s for s in t.form.leaves() if s.kind == "data"}
+    return any(set(s.loops).intersection(numbers) for s in drawn - bounds_of_rows)
+
+
+# ----------------------------------------------------------------------------------------------------- steered
+
+
+def _steered(access: Access, found: Walk) -> Walk:
+    """Data picks where it goes: between K places that are as likely, a run to one of them has K/(K-1) elements."""
+    assert access.choice is not None
+    places = max(2, len(access.choice.alternatives))
+    run = places / (places - 1)
+    if found.pattern in ("indirect", "irregular", "strided", "descending", "repeated"):
+        run = 1.0
+    if not access.loops:
+        return found
+    numbers = {loop.number for loop in access.loops}
+    if not numbers.intersection(_redrawn(access.choice.selector)):
+        return Walk("steered", found.stride_bytes, found.run_elements, found.basis, found.executions, None)
+    inner = access.loops[-1]
+    if inner.kind == "copy" or not _redrawn(access.choice.selector).intersection({inner.number}):
+        return Walk("steered", None, found.run_elements, found.basis, found.executions, None)
+    return Walk("steered", None, run, "data", found.executions, None)

@@ -1,0 +1,149 @@
+"""Accesses of a loop that belong together: parts of one element, neighbours in a run, branches that add up."""
+
+from __future__ import annotations
+
+from collections import defaultdict
+from collections.abc import Hashable, Sequence
+from dataclasses import dataclass
+from itertools import pairwise
+
+from beatwise.model.access import Access, Guard
+from beatwise.model.form import Form, negation
+from beatwise.traffic.motion import moving_loop
+
+Conditions = frozenset[Form]
+
+BRANCHES_AT_MOST = 32  #: stores to one address whose conditions are put together; more are left as they are
+
+
+@dataclass(frozen=True, slots=True)
+class Seat:
+    """Where an access stands among those of its loop. ``sweep`` and ``element`` only tell same from different."""
+
+    sweep: int  #: accesses of one sweep make one ascending run together
+    element: int  #: accesses of one element reach the same element in each iteration
+    head: int  #: index of the access to the lowest element of the sweep
+    elements: int  #: how many elements the sweep visits in an iteration
+    alike: int  #: how many accesses use the same bytes of the element
+
+
+def seats(accesses: Sequence[Access]) -> tuple[Seat, ...]:
+    """For each access, its seat.
+
+    ``a[3*i]``, ``a[3*i + 1]`` and ``a[3*i + 2]`` are one sweep of three elements; the fields of a record are one
+    element. A window ``a[i]``, ``a[i + 1]`` is no sweep: it meets elements again in the next iteration.
+    """
+    keys = [_key(index, access) for index, access in enumerate(accesses)]
+    alike: dict[Hashable, int] = defaultdict(int)
+    groups: dict[Hashable, list[int]] = defaultdict(list)
+    for index, access in enumerate(accesses):
+        alike[keys[index], access.offset.constant, access.part_bytes] += 1
+        groups[keys[index][0], _conditions(access.guards)].append(index)
+    numbers: dict[Hashable, int] = {}
+    found: list[Seat | None] = [None] * len(accesses)
+    for group in groups.values():
+        slots = sorted({keys[index][1] for index in group})
+        together = len(slots) > 1 and _one_run(accesses[group[0]], slots)
+        head = min(group, key=lambda index: keys[index][1])
+        for index in group:
+            access = accesses[index]
+            found[index] = Seat(
+                sweep=numbers.setdefault(head if together else keys[index], len(numbers)),
+                element=numbers.setdefault(keys[index], len(numbers)),
+                head=head if together else index,
+                elements=len(slots) if together else 1,
+                alike=alike[keys[index], access.offset.constant, access.part_bytes],
+            )
+    return tuple(seat for seat in found if seat is not None)
+
+
+def effective_guards(accesses: Sequence[Access]) -> tuple[tuple[Guard, ...], ...]:
+    """For each access, the guards that are left when those to the same address in other branches are put with it.
+
+    The two stores of ``if (wet) out[i] = a; else out[i] = b;`` together run always: neither keeps a guard.
+    """
+    result = [access.guards for access in accesses]
+    groups: dict[Hashable, list[int]] = defaultdict(list)
+    for index, access in enumerate(accesses):
+        if access.guards:
+            groups[_key(index, access), access.offset.constant].append(index)
+    for group in groups.values():
+        if 1 < len(group) <= BRANCHES_AT_MOST:
+            merged = _merged([(_conditions(accesses[index].guards), frozenset((index,))) for index in group])
+            for index in group:
+                least = min((conditions for conditions, origins in merged if index in origins), key=len)
+                result[index] = tuple(guard for guard in accesses[index].guards if guard.condition in least)
+    return tuple(result)
+
+
+def exclusive(left: Access, right: Access) -> Form | None:
+    """The condition of ``left`` that keeps both from running in one iteration, if there is one."""
+    for guard in left.guards:
+        for other in right.guards:
+            if _opposite(guard.condition, other.condition) or _different(guard.condition, other.condition):
+                return guard.condition
+    return None
+
+
+def _opposite(left: Form, right: Form) -> bool:
+    """Whether one is true where the other is false."""
+    return right == negation(left) or left == negation(right)
+
+
+def _different(left: Form, right: Form) -> bool:
+    """Whether they ask one value to be two numbers."""
+    mine, theirs = _number_asked(left), _number_asked(right)
+    return mine is not None and theirs is not None and mine[0] == theirs[0] and mine[1] != theirs[1]
+
+
+def _number_asked(condition: Form) -> tuple[Form, int] | None:
+    """``x`` and ``3`` of ``x == 3``."""
+    symbols = condition.symbols()
+    if len(symbols) == 1 and len(condition.terms) == 1 and condition.constant == 0:
+        (symbol,) = symbols
+        if symbol.kind == "operation" and symbol.name == "eq" and condition.terms[symbol,] == 1:
+            value, asked = symbol.operands
+            return (value - asked, 0) if asked.known is None else (value - value.constant, asked.known - value.constant)
+    return None
+
+
+def _conditions(guards: tuple[Guard, ...]) -> Conditions:
+    return frozenset(guard.condition for guard in guards)
+
+
+def _key(index: int, access: Access) -> tuple[Hashable, float]:
+    """The family (equal but for a constant in the address), and the number of the element in it."""
+    if not access.loops or access.unresolved is not None:
+        return index, 0
+    constant, size = access.offset.constant, access.element_bytes
+    within = constant % size + access.part_bytes <= size
+    family = (
+        access.argument,
+        access.interface,
+        access.direction,
+        size,
+        access.loops[-1].number,
+        access.offset - constant,
+    )
+    return family, constant // size if within else constant / size
+
+
+def _one_run(access: Access, slots: Sequence[float]) -> bool:
+    """Whether elements at ``slots`` follow each other and an iteration moves them on by just as many."""
+    loop = moving_loop(access)
+    step = access.offset.coefficient(loop.counter) if loop is not None else None
+    follow = all(after - before == 1 for before, after in pairwise(slots))
+    return follow and step is not None and step.known == len(slots) * access.element_bytes
+
+
+def _merged(found: list[tuple[Conditions, frozenset[int]]]) -> list[tuple[Conditions, frozenset[int]]]:
+    """``found``, and what follows where two sets differ only in one condition, true in one and false in the other."""
+    for left, left_origins in found:  # the list grows while it is read
+        for right, right_origins in found:
+            mine, theirs = left - right, right - left
+            if len(mine) != 1 or len(theirs) != 1 or not _opposite(*mine, *theirs):
+                continue
+            both = (left & right, left_origins | right_origins)
+            if both not in found and len(found) < 4 * BRANCHES_AT_MOST:
+                found.append(both)
+    return found

@@ -1,0 +1,168 @@
+"""All rules together: which of them is told at each place, and how loud."""
+
+from __future__ import annotations
+
+import inspect
+from collections.abc import Callable, Iterable, Iterator, Mapping
+from dataclasses import dataclass, replace
+from types import ModuleType
+from typing import Literal
+
+from beatwise.model.finding import LEVELS, Facts, Finding, Level
+from beatwise.model.traffic import Block
+from beatwise_rules import (
+    assumed_size,
+    data_dependent_destination,
+    descending_access,
+    early_exit,
+    guarded_access,
+    in_place_update,
+    indirect_index,
+    interleaved_accesses,
+    invented_name,
+    narrow_port,
+    partial_record,
+    repeated_address,
+    shared_port,
+    short_run,
+    strided_access,
+    unresolved_access,
+    volatile_access,
+)
+from beatwise_rules.levels import DEFAULTS, Thresholds, accesses_of, weighed
+
+Setting = Level | Literal["off"]
+
+
+@dataclass(frozen=True, slots=True)
+class Rule:
+    """A rule: its name, its page in the manual, what it finds, and which later rules its cure settles too."""
+
+    name: str
+    page: str
+    find: Callable[[Facts], Iterator[Finding]]
+    cures: frozenset[str]
+
+
+def _rule(module: ModuleType) -> Rule:
+    name = module.__name__.rpartition(".")[2].replace("_", "-")
+    return Rule(name, inspect.cleandoc(module.__doc__ or ""), module.find, module.CURES)
+
+
+BY_CAUSE = tuple(
+    map(
+        _rule,
+        (
+            unresolved_access,
+            data_dependent_destination,
+            indirect_index,
+            guarded_access,
+            early_exit,
+            volatile_access,
+            repeated_address,
+            descending_access,
+            strided_access,
+            in_place_update,
+            interleaved_accesses,
+            short_run,
+            partial_record,
+            narrow_port,
+        ),
+    )
+)  #: rules about an access, the cause that must go first before the others
+OF_THE_KERNEL = tuple(map(_rule, (shared_port, assumed_size, invented_name)))  #: told beside the others
+RULES = BY_CAUSE + OF_THE_KERNEL
+
+TOLD_ELSEWHERE: Mapping[Block, str] = {"load-and-store": "in-place-update", "interleaved": "interleaved-accesses"}
+#: what blocks several accesses but is told at one of them: the others stay silent about lesser causes
+
+Site = tuple[str, int, str | None]
+
+
+def rule_names() -> tuple[str, ...]:
+    """All rules, by cause."""
+    return tuple(rule.name for rule in RULES)
+
+
+def page(name: str) -> str:
+    """The rule's page in the manual; KeyError where there is no such rule."""
+    return {rule.name: rule.page for rule in RULES}[name]
+
+
+def ask(
+    facts: Facts, thresholds: Thresholds = DEFAULTS, levels: Mapping[str, Setting] | None = None
+) -> tuple[Finding, ...]:
+    """What there is to tell about a kernel, the gravest first, then by loss and place.
+
+    ``levels`` overrides the level of a rule, by name; ``off`` leaves its findings out (nothing else is told instead).
+    """
+    wanted = levels or {}
+    told = [*_joined(_by_cause(facts)), *_of_the_kernel(facts)]
+    told = [_quieter(weighed(finding, facts, thresholds), told) for finding in told]
+    told = [
+        replace(finding, level=setting)
+        if (setting := wanted.get(finding.rule)) is not None and setting != "off"
+        else finding
+        for finding in told
+        if wanted.get(finding.rule) != "off"
+    ]
+    return tuple(sorted(told, key=_gravest_first))
+
+
+def _gravest_first(finding: Finding) -> tuple[int, float, str, int, int, str]:
+    place = finding.place
+    return LEVELS.index(finding.level), -(finding.loss_gbps or 0.0), place.file, place.line, place.column, finding.rule
+
+
+def _by_cause(facts: Facts) -> Iterator[Finding]:
+    """For each site the finding of the first cause, with those that would still hold after it."""
+    sites: dict[Site, list[Finding]] = {}
+    for rule in BY_CAUSE:
+        for finding in rule.find(facts):
+            sites.setdefault(_site(finding), []).append(finding)
+    cures = {rule.name: rule.cures for rule in BY_CAUSE}
+    for site, findings in sites.items():
+        first, *later = findings
+        choice = sites.get((site[0], site[1], None), []) if site[2] is not None else []
+        if choice or _is_told_elsewhere(first, facts):
+            continue
+        if site[2] is None:
+            later += [other for key, others in sites.items() if key[:2] == site[:2] and key != site for other in others]
+        names = (finding.rule for finding in later if finding.rule not in cures[first.rule])
+        yield replace(first, then=tuple(sorted(set(names), key=rule_names().index)))
+
+
+def _site(finding: Finding) -> Site:
+    return finding.place.file, finding.place.offset, finding.argument
+
+
+def _is_told_elsewhere(first: Finding, facts: Facts) -> bool:
+    """Whether a graver cause, told at another access, holds the site's accesses too."""
+    order = rule_names()
+    blocks = {block for traffic in accesses_of(first, facts) for block in traffic.blocked}
+    return any(order.index(rule) < order.index(first.rule) for block, rule in TOLD_ELSEWHERE.items() if block in blocks)
+
+
+def _joined(findings: Iterable[Finding]) -> Iterator[Finding]:
+    """The findings; those of one rule on one line for one argument (``x[k] + x[k + 1]``) are told once, the worst."""
+    lines: dict[tuple[str, str, int, str | None], list[Finding]] = {}
+    for finding in findings:
+        lines.setdefault((finding.rule, finding.place.file, finding.place.line, finding.argument), []).append(finding)
+    for group in lines.values():
+        worst = max(group, key=lambda finding: finding.loss_gbps or 0.0)
+        names = {name for finding in group for name in finding.then}
+        yield replace(worst, then=tuple(sorted(names, key=rule_names().index)))
+
+
+def _of_the_kernel(facts: Facts) -> Iterator[Finding]:
+    for rule in OF_THE_KERNEL:
+        yield from rule.find(facts)
+
+
+def _quieter(finding: Finding, told: Iterable[Finding]) -> Finding:
+    """A shared port as a note where its accesses' taking turns is told already: the loss is the same one."""
+    if finding.rule == "shared-port" and any(
+        other.rule == "interleaved-accesses" and other.interface == finding.interface for other in told
+    ):
+        return replace(finding, level="note")
+    return finding

@@ -1,0 +1,85 @@
+"""What the rules ask of an access: which loop moves it, what data it hangs on, which others stand at the same site."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterable, Iterator
+
+from beatwise.model.access import Access, LoopInstance
+from beatwise.model.finding import Facts
+from beatwise.model.form import Form, Symbol, bounds
+from beatwise.model.traffic import Block, Traffic
+
+TINY_BYTES = (
+    4096  #: an argument read once that is no larger than this is left in peace (our own choice: one page of addresses)
+)
+
+PLAUSIBLE_BYTES = 1 << 30  #: what a 32-bit index could reach says nothing about the size of an array
+
+
+def sites(facts: Facts, holds: Callable[[Traffic], bool]) -> Iterator[list[Traffic]]:
+    """The accesses for which ``holds`` is true and that run in a loop, grouped by place and argument, the worst first.
+
+    A load and a store at one place (``x[k] += 1``), and a helper called twice on one argument, are one site.
+    """
+    groups: dict[tuple[str, int, str], list[Traffic]] = {}
+    for traffic in facts.traffic:
+        if traffic.walk.pattern != "single" and traffic.access.loops and holds(traffic):
+            place = traffic.access.place
+            groups.setdefault((place.file, place.offset, traffic.access.argument), []).append(traffic)
+    for group in groups.values():
+        yield sorted(group, key=lambda traffic: -traffic.loss_gbps)
+
+
+def blocked_by(block: Block) -> Callable[[Traffic], bool]:
+    """Whether an access is kept from bursts for this reason."""
+    return lambda traffic: block in traffic.blocked
+
+
+def moves(loop: LoopInstance, access: Access) -> bool:
+    """Whether the address of the access changes with the loop."""
+    return any(
+        symbol.loop == loop.number or (symbol.kind in ("data", "unknown") and loop.number in symbol.loops)
+        for symbol in access.offset.leaves()
+    )
+
+
+def moving_loop(access: Access) -> LoopInstance:
+    """The innermost loop that moves the address; the innermost of all when none does."""
+    return next((loop for loop in reversed(access.loops) if moves(loop, access)), access.loops[-1])
+
+
+def working_loop(access: Access) -> LoopInstance | None:
+    """The innermost loop whose iterations follow each other in time: one unrolled in full is hardware side by side."""
+    return next((loop for loop in reversed(access.loops) if loop.unroll != 0), None)
+
+
+def data_in(form: Form) -> tuple[Symbol, ...]:
+    """The data that a form hangs on, in the order of the source."""
+    found = [symbol for symbol in form.leaves() if symbol.kind == "data"]
+    return tuple(sorted(found, key=lambda symbol: symbol.number))
+
+
+def named_data(symbols: Iterable[Symbol]) -> list[str]:
+    """The names of data that have one."""
+    return list(dict.fromkeys(symbol.name for symbol in symbols if symbol.name.strip("?~ ")))
+
+
+def is_tiny(traffic: Traffic) -> bool:
+    """Whether the access walks once, in order, over less than a page: a constant table, a header."""
+    walk = traffic.walk
+    return (
+        traffic.bytes_moved is not None
+        and traffic.bytes_moved < TINY_BYTES
+        and walk.pattern == "sequential"
+        and not traffic.blocked
+        and walk.executions is not None
+        and (walk.run_elements or 0) >= walk.executions
+    )
+
+
+def argument_bytes(access: Access) -> int | None:
+    """How large the argument is, as far as its type, a directive, or the reach of the index says."""
+    low, high = bounds(access.offset)
+    reach = high + access.element_bytes if low is not None and low >= 0 and high is not None else None
+    known = [value for value in (access.array_bytes, reach) if value is not None and value <= PLAUSIBLE_BYTES]
+    return min(known) if known else None

@@ -1,0 +1,80 @@
+"""An access that could not be followed to its memory or its address.
+
+Nothing is said about what it costs, because nothing is known. The reason is given with the place: a pointer that
+comes out of a computation, a name that is missing, a construct that is not understood. The rates of the kernel leave
+this access out.
+
+It matters when the access moves much data. One that runs once can be left.
+
+What to change: make the address plain. Index the argument itself instead of a pointer kept in memory; give the
+missing header with `--include`, or the value of a size with `--given`.
+
+Slow::
+
+    // The address comes back from arithmetic on integers.
+    void through_integer(float *map, unsigned long where) {
+    #pragma HLS INTERFACE mode=m_axi port=map bundle=map
+        for (int i = 0; i < 1024; ++i) {
+            unsigned long address = ((unsigned long)map ^ where) + i * 4ul;
+            *(float *)address = 0;
+        }
+    }
+
+Fast::
+
+    // The argument itself is indexed.
+    void through_index(float *map) {
+    #pragma HLS INTERFACE mode=m_axi port=map bundle=map
+        for (int i = 0; i < 1024; ++i) map[i] = 0;
+    }
+
+Sources: none needed.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from beatwise.model.finding import Facts, Finding
+from beatwise.model.traffic import Traffic
+from beatwise_rules.wording import PASSIVE, quoted, sentence
+
+CURES: frozenset[str] = frozenset()
+
+
+def find(facts: Facts) -> Iterator[Finding]:
+    """One finding for each place, argument and reason; a warning in a loop, a note elsewhere."""
+    told: set[tuple[str, int, str, str]] = set()
+    for traffic in facts.traffic:
+        if not is_unresolved(traffic):
+            continue
+        access, place = traffic.access, traffic.access.place
+        reason = access.unresolved or traffic.walk.reason or "its address could not be followed"
+        key = (place.file, place.offset, access.argument, reason)
+        if key in told:
+            continue
+        told.add(key)
+        yield Finding(
+            rule="unresolved-access",
+            level="warning" if access.loops else "note",
+            kernel=facts.trace.kernel,
+            place=place,
+            argument=access.argument or None,
+            interface=access.interface or None,
+            message=f"{_who(access.argument)} {PASSIVE[access.direction]} at an address that could not be followed.",
+            because=(
+                f"{sentence(reason).rstrip('.')}.",
+                "Its runs and its rate are unknown; the kernel's figures leave it out.",
+            ),
+            instead="Index the argument itself where you can; give a missing header with `--include DIR`, "
+            "a size with `--given NAME=VALUE`.",
+        )
+
+
+def is_unresolved(traffic: Traffic) -> bool:
+    """Whether the access was found but not followed."""
+    return traffic.access.unresolved is not None or traffic.walk.pattern == "unresolved"
+
+
+def _who(argument: str) -> str:
+    return quoted(argument) if argument else "Memory"

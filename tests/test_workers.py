@@ -1,0 +1,101 @@
+"""What one item does to its worker costs that item only."""
+
+from __future__ import annotations
+
+import ctypes
+import os
+import time
+from pathlib import Path
+
+import pytest
+
+from beatwise.workers import Done, Limits, Lost, each
+
+TIGHT = Limits(seconds=2.0, megabytes=400)
+
+
+@pytest.fixture(autouse=True)
+def workers_find_this_module(monkeypatch: pytest.MonkeyPatch) -> None:
+    monkeypatch.setenv("PYTHONPATH", str(Path(__file__).parent))
+
+
+def work(item: int | str) -> int:
+    """What the workers are given: an item that is a number is squared, a word is misbehaviour."""
+    if item == "crash":
+        ctypes.string_at(0)
+    if item == "hang":
+        time.sleep(60)
+    if item == "spin":
+        while True:
+            pass
+    if item == "swallow":
+        held = []
+        while True:
+            held.append(bytearray(50_000_000))
+    if item == "abort":
+        os.abort()
+    if item == "raise":
+        raise KeyError("no such loop")
+    if item == "print":
+        os.write(1, b"not a result")
+        return 0
+    assert isinstance(item, int)
+    return item * item
+
+
+@pytest.mark.parametrize("jobs", [1, 2, 5])
+def test_results_come_in_the_order_of_the_items_however_many_workers_share(jobs: int) -> None:
+    assert list(each(work, range(20), limits=TIGHT, jobs=jobs)) == [Done(item * item) for item in range(20)]
+
+
+@pytest.mark.parametrize(
+    ("item", "why"),
+    [
+        ("crash", "the analysis of this file crashed (SIGSEGV)"),
+        ("abort", "the analysis of this file crashed (SIGABRT)"),
+        ("hang", "gave up after 2 s"),
+        ("spin", "gave up after 2 s"),
+        ("swallow", "needs more than 400 MB of memory"),
+    ],
+)
+def test_a_worker_that_dies_costs_its_own_item_only(item: str, why: str) -> None:
+    assert list(each(work, [2, item, 3], limits=TIGHT, jobs=1)) == [Done(4), Lost(why), Done(9)]
+
+
+def test_all_misbehaviour_at_once_leaves_the_others_alone() -> None:
+    found = list(each(work, [1, "crash", 2, "swallow", 3, "abort", 4], limits=TIGHT, jobs=3))
+    assert [each.result for each in found if isinstance(each, Done)] == [1, 4, 9, 16]
+    assert sum(isinstance(each, Lost) for each in found) == 3
+
+
+def test_a_mistake_of_ours_is_told_in_one_line_with_its_place() -> None:
+    (lost,) = each(work, ["raise"], limits=TIGHT)
+    assert isinstance(lost, Lost)
+    assert lost.why.startswith(
+        "a mistake in beatwise itself, please report it: KeyError: 'no such loop' (at tests/test_workers.py:"
+    )
+    assert "\n" not in lost.why
+
+
+def test_what_a_library_prints_is_not_taken_for_a_result() -> None:
+    assert list(each(work, ["print", 3], limits=TIGHT)) == [Done(0), Done(9)]
+
+
+def test_a_module_in_the_working_directory_is_not_imported(tmp_path: object, monkeypatch: pytest.MonkeyPatch) -> None:
+    monkeypatch.chdir(str(tmp_path))
+    with open("pickle.py", "w") as planted:
+        planted.write("raise SystemExit('planted code ran')\n")
+    assert list(each(work, [3], limits=TIGHT)) == [Done(9)]
+
+
+def test_no_worker_outlives_the_loop_that_is_left_early() -> None:
+    results = each(pid, range(4), limits=TIGHT, jobs=2)
+    first = next(results)
+    assert isinstance(first, Done)
+    results.close()  # type: ignore[attr-defined]
+    with pytest.raises(ProcessLookupError):
+        os.kill(first.result, 0)
+
+
+def pid(item: int) -> int:
+    return os.getpid()
