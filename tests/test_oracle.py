@@ -13,10 +13,9 @@ if TYPE_CHECKING:
     from collections.abc import Callable
 
 
-@pytest.fixture(scope="session")
-def scratch(pytestconfig: pytest.Config) -> Path:
-    assert pytestconfig.cache is not None
-    return pytestconfig.cache.mkdir("oracle")
+@pytest.fixture(scope="module")
+def scratch(tmp_path_factory: pytest.TempPathFactory) -> Path:
+    return tmp_path_factory.mktemp("oracle")
 
 
 @pytest.fixture

@@ -81,6 +81,9 @@ def test_everything_can_be_set(here: Path) -> None:
     )  # fmt: skip
 
 
+SECONDS = "must be a number of seconds, above 0 and up to a day"
+
+
 @pytest.mark.parametrize(
     ("text", "told"),
     [
@@ -93,9 +96,9 @@ def test_everything_can_be_set(here: Path) -> None:
         ("jobs = 0", "'jobs' must be a whole number of at least 1, not 0"),
         ("jobs = true", "'jobs' must be a whole number of at least 1, not True"),
         ("jobs = 'two'", "'jobs' must be a whole number of at least 1, not 'two'"),
-        ("time_limit_seconds = 0", "'time_limit_seconds' must be a number of seconds, above 0 and up to a day, not 0"),
-        ("time_limit_seconds = nan", "'time_limit_seconds' must be a number of seconds, above 0 and up to a day, not nan"),
-        ("time_limit_seconds = 1e9", "'time_limit_seconds' must be a number of seconds, above 0 and up to a day, not 1000000000.0"),
+        ("time_limit_seconds = 0", f"'time_limit_seconds' {SECONDS}, not 0"),
+        ("time_limit_seconds = nan", f"'time_limit_seconds' {SECONDS}, not nan"),
+        ("time_limit_seconds = 1e9", f"'time_limit_seconds' {SECONDS}, not 1000000000.0"),
         ("threshold = 'info'", "'threshold' must be error, warning or note, not 'info'"),
         ("threshold = 'off'", "'threshold' must be error, warning or note, not 'off'"),
         ("define = ['4=N']", "'define' must be NAME or NAME=VALUE, or a list of those, not ['4=N']"),

@@ -33,7 +33,7 @@ ENTRY = {
     "blocked": [],
     "reason": None,
 }
-FINDING = {"rule": "strided-access", "argument": "in", "line": 2, "level": "error", "message": "..."}
+FINDING = {"kernel": "top", "rule": "strided-access", "argument": "in", "line": 2, "level": "error", "message": "..."}
 
 
 def answer(accesses: list[dict[str, Any]], findings: list[dict[str, Any]]) -> dict[str, Any]:

@@ -122,6 +122,8 @@ def analyse(task: Task) -> Outcome:
     unread = [problem for program, _ in programs for problem in program.problems]
     if not kernels and not unread:
         unread = [Problem(name, None, "no kernel function in it")]
+    broken = {problem.file for problem in unread}
+    told = [problem for each in kernels for problem in each.trace.problems if problem.file not in broken]
     texts = {**task.files, **task.includes}
     acceptances = tuple(acceptance for file, text in texts.items() for acceptance in acceptances_in(text, file))
     findings = [finding for kernel in kernels for finding in kernel.findings]
@@ -130,7 +132,7 @@ def analyse(task: Task) -> Outcome:
             sheet(each.trace, each.traffic, each.ports, accepted(each.findings, acceptances), each.seconds)
             for each in kernels
         ),
-        problems=tuple(dict.fromkeys([*unread, *(problem for each in kernels for problem in each.trace.problems)])),
+        problems=tuple(dict.fromkeys([*unread, *told])),  # what an error in the text entails is not told beside it
         complete=not unread,
         acceptances=acceptances,
         used=frozenset(each for each in acceptances if any(accepts(each, finding) for finding in findings)),

@@ -73,8 +73,11 @@ BY_CAUSE = tuple(
 OF_THE_KERNEL = tuple(map(_rule, (shared_port, assumed_size, invented_name)))  #: told beside the others
 RULES = BY_CAUSE + OF_THE_KERNEL
 
-TOLD_ELSEWHERE: Mapping[Block, str] = {"load-and-store": "in-place-update", "interleaved": "interleaved-accesses"}
-#: what blocks several accesses but is told at one of them: the others stay silent about lesser causes
+TOLD_ELSEWHERE: Mapping[Block, str] = {
+    "destination-by-data": "data-dependent-destination",
+    "load-and-store": "in-place-update",
+    "interleaved": "interleaved-accesses",
+}  #: what holds several accesses but is told at one of them: the others stay silent about lesser causes
 
 Site = tuple[str, int, str | None]
 
@@ -123,8 +126,7 @@ def _by_cause(facts: Facts) -> Iterator[Finding]:
     cures = {rule.name: rule.cures for rule in BY_CAUSE}
     for site, findings in sites.items():
         first, *later = findings
-        choice = sites.get((site[0], site[1], None), []) if site[2] is not None else []
-        if choice or _is_told_elsewhere(first, facts):
+        if _is_told_elsewhere(first, facts):
             continue
         if site[2] is None:
             later += [other for key, others in sites.items() if key[:2] == site[:2] and key != site for other in others]
@@ -138,9 +140,11 @@ def _site(finding: Finding) -> Site:
 
 def _is_told_elsewhere(first: Finding, facts: Facts) -> bool:
     """Whether a graver cause, told at another access, holds the site's accesses too."""
-    order = rule_names()
-    blocks = {block for traffic in accesses_of(first, facts) for block in traffic.blocked}
-    return any(order.index(rule) < order.index(first.rule) for block, rule in TOLD_ELSEWHERE.items() if block in blocks)
+    here, order = accesses_of(first, facts), rule_names()
+    causes = {TOLD_ELSEWHERE[block] for traffic in here for block in traffic.blocked if block in TOLD_ELSEWHERE}
+    if any(data_dependent_destination.is_steered(traffic) for traffic in here):
+        causes.add("data-dependent-destination")
+    return any(order.index(cause) < order.index(first.rule) for cause in causes)
 
 
 def _joined(findings: Iterable[Finding]) -> Iterator[Finding]:

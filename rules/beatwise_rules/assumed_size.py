@@ -44,7 +44,7 @@ from collections.abc import Iterator
 from beatwise.model.access import LoopInstance
 from beatwise.model.finding import Facts, Finding
 from beatwise.model.traffic import Traffic
-from beatwise_rules.wording import lines, listed
+from beatwise_rules.wording import lines, listed, the_loop
 
 ASSUMED_TRIPS = 1024  #: what a loop runs where nothing is known
 SHOWN = 6  #: evidence names no more loops than this
@@ -99,11 +99,8 @@ def _parameters(facts: Facts, assumed: list[Traffic]) -> list[str]:
 
 
 def _evidence(loop: LoopInstance) -> str:
-    name = f" over `{loop.counter.name}`" if loop.counter.name.isidentifier() else ""
     if loop.why_unknown or loop.trips is None:
         why = f": {loop.why_unknown}" if loop.why_unknown else ""
-        return f"Line {loop.place.line}: the loop{name} has no known length{why}."
-    asked = listed(
-        [symbol.name for symbol in loop.trips.leaves() if symbol.kind in ("parameter", "data")] or [str(loop.trips)]
-    )
-    return f"Line {loop.place.line}: how often the loop{name} runs hangs on {asked}."
+        return f"How long {the_loop(loop)} runs is not known{why}."
+    hangs = [symbol.name for symbol in loop.trips.leaves() if symbol.kind in ("parameter", "data")]
+    return f"How long {the_loop(loop)} runs hangs on {listed(hangs or [str(loop.trips)])}."

@@ -68,17 +68,19 @@ CURES = frozenset({"guarded-access", "repeated-address", "descending-access", "s
 
 
 def find(facts: Facts) -> Iterator[Finding]:
-    """One finding for each place at which data chooses, whatever the number of arguments it chooses from."""
-    chosen: dict[tuple[str, int], list[Traffic]] = {}
+    """One finding for each choice that data makes, whatever the number of arguments it chooses from."""
+    chosen: dict[tuple[str, int, str], list[Traffic]] = {}
     for site in sites(facts, is_steered):
-        place = site[0].access.place
-        chosen.setdefault((place.file, place.offset), []).extend(site)
-    for site in chosen.values():
-        yield _told(facts, sorted(site, key=lambda traffic: -traffic.loss_gbps))
+        for traffic in site:
+            access = traffic.access
+            where = access.place.offset if access.choice else -moving_loop(access).number
+            chosen.setdefault((access.place.file, where, access.direction), []).append(traffic)
+    for group in chosen.values():
+        yield _told(facts, sorted(group, key=lambda traffic: (-traffic.loss_gbps, traffic.access.order)))
 
 
 def is_steered(traffic: Traffic) -> bool:
-    """Whether data decides, access by access, where it goes."""
+    """Whether data decides where it goes. Branches of one condition, each with an argument of its own, are a choice."""
     return traffic.walk.pattern == "steered" or "destination-by-data" in traffic.blocked
 
 
@@ -86,7 +88,6 @@ def _told(facts: Facts, site: list[Traffic]) -> Finding:
     worst, access = site[0], site[0].access
     arguments = list(dict.fromkeys(traffic.access.argument for traffic in site))
     alternatives = list(dict.fromkeys(access.choice.alternatives)) if access.choice else arguments
-    line = (access.choice or access).place.line
     return trouble(
         "data-dependent-destination",
         facts,
@@ -94,8 +95,7 @@ def _told(facts: Facts, site: list[Traffic]) -> Finding:
         argument=arguments[0] if len(arguments) == 1 else None,
         message=_message(access, alternatives),
         because=(
-            f"The choice on line {line} is made anew in every iteration of {the_loop(moving_loop(access))}: "
-            "no burst can be announced.",
+            _how_often(worst),
             _odds(access, len(alternatives)),
             f"An element has {size(access.element_bytes)}, a burst of this port {size(burst_bytes(facts, worst))}.",
         ),
@@ -103,8 +103,19 @@ def _told(facts: Facts, site: list[Traffic]) -> Finding:
     )
 
 
+def _how_often(traffic: Traffic) -> str:
+    access = traffic.access
+    line = (access.choice or access).place.line
+    if "destination-by-data" in traffic.blocked or not traffic.walk.run_elements or traffic.walk.run_elements <= 2:
+        loop = the_loop(moving_loop(access))
+        return f"The choice on line {line} is made anew in every iteration of {loop}: no burst can be announced."
+    row = count(traffic.walk.run_elements, "element")
+    return f"The choice on line {line} holds for {row} in a row, then it is made anew."
+
+
 def _message(access: Access, alternatives: list[str]) -> str:
-    pickers = named_data(data_in(access.choice.selector)) if access.choice else []
+    choosing = [access.choice.selector] if access.choice else [guard.condition for guard in access.guards]
+    pickers = named_data(symbol for form in choosing for symbol in data_in(form))
     picks = f"{listed(pickers)} {'pick' if len(pickers) > 1 else 'picks'}" if pickers else "Data picks"
     way = "goes to" if access.direction == "write" else "comes from"
     where = f"which of {listed(alternatives)}" if len(alternatives) > 1 else f"where in {listed(alternatives)}"

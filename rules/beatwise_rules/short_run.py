@@ -14,29 +14,24 @@ Slow::
 
     #include <ap_int.h>
 
-    // The first eight words of each ray: a run of 8 beats, then a jump.
-    void near_range(const ap_uint<512> *rays, ap_uint<512> *near) {
+    // The header of each ray, four words, is put before its gates.
+    void set_headers(const ap_uint<512> *headers, ap_uint<512> *rays) {
+    #pragma HLS INTERFACE mode=m_axi port=headers bundle=headers
     #pragma HLS INTERFACE mode=m_axi port=rays bundle=rays
-    #pragma HLS INTERFACE mode=m_axi port=near bundle=near
         for (int ray = 0; ray < 360; ++ray)
-            for (int word = 0; word < 8; ++word) near[ray * 8 + word] = rays[ray * 64 + word];
+            for (int word = 0; word < 4; ++word) rays[ray * 64 + word] = headers[ray * 4 + word];
     }
 
 Fast::
 
     #include <ap_int.h>
 
-    // Whole rays are read; what is not needed is left out on chip.
-    void near_range(const ap_uint<512> *rays, ap_uint<512> *near) {
-    #pragma HLS INTERFACE mode=m_axi port=rays bundle=rays
-    #pragma HLS INTERFACE mode=m_axi port=near bundle=near
-        ap_uint<512> kept[2880];
+    // The headers have a stretch of memory of their own.
+    void set_headers(const ap_uint<512> *headers, ap_uint<512> *ray_headers) {
+    #pragma HLS INTERFACE mode=m_axi port=headers bundle=headers
+    #pragma HLS INTERFACE mode=m_axi port=ray_headers bundle=rays
         for (int ray = 0; ray < 360; ++ray)
-            for (int word = 0; word < 64; ++word) {
-                ap_uint<512> gates = rays[ray * 64 + word];
-                if (word < 8) kept[ray * 8 + word] = gates;
-            }
-        for (int i = 0; i < 2880; ++i) near[i] = kept[i];
+            for (int word = 0; word < 4; ++word) ray_headers[ray * 4 + word] = headers[ray * 4 + word];
     }
 
 Sources: the two rates of a port are those of the board's profile, fitted to published measurements that are named

@@ -69,7 +69,7 @@ def _told(facts: Facts, site: list[Traffic]) -> Finding:
         message=f"{name} {PASSIVE[access.direction]} in steps of {by}{backwards}, each element a request of its own.",
         because=(
             _step(access, stride, loop),
-            f"{_used(facts, access, stride)}; a burst of this port holds {size(burst_bytes(facts, worst))} without a gap.",
+            f"{_used(facts, access, stride)}; a burst of this port holds {size(burst_bytes(facts, worst))}.",
         ),
         instead=_advice(access, stride, loop),
     )
@@ -100,11 +100,11 @@ def _advice(access: Access, stride: int | None, loop: LoopInstance) -> str:
         f"in rows of {size(side * element)}, and walk the tile in any order"
     )
     if unit is not None:
-        return f"Make {the_loop(unit)} the innermost, it steps {name} by one element; or, where the order must stay, {tile}."
+        return f"Make {the_loop(unit)} the innermost: it moves by one element. Where the order must stay, {tile}."
     if stride is not None and abs(stride) % element == 0 and abs(stride) <= NEAR_ELEMENTS * element:
         if access.direction == "read":
             nth = _ordinal(abs(stride) // element)
-            return f"Read in order and pick every {nth} element on chip, or lay {name} out so that what is used lies together."
+            return f"Read in order and pick every {nth} on chip, or lay {name} out so that what is used lies together."
         return f"Gather results on chip and write in order, or lay {name} out so that what is written lies together."
     return f"Lay {name} out in the order of the loop, or {tile}."
 

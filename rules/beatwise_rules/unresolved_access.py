@@ -1,31 +1,30 @@
 """An access that could not be followed to its memory or its address.
 
-Nothing is said about what it costs, because nothing is known. The reason is given with the place: a pointer that
-comes out of a computation, a name that is missing, a construct that is not understood. The rates of the kernel leave
-this access out.
+Nothing is said about what it costs, because nothing is known. The reason is given with the place: a variable that was
+never set, a pointer that comes out of a computation, a name that is missing, a construct that is not understood. The
+rates of the kernel leave this access out.
 
 It matters when the access moves much data. One that runs once can be left.
 
-What to change: make the address plain. Index the argument itself instead of a pointer kept in memory; give the
-missing header with `--include`, or the value of a size with `--given`.
+What to change: make the address plain. Set what it is computed from, index the argument itself instead of a pointer
+kept in memory; give the missing header with `--include`, or the value of a size with `--given`.
 
 Slow::
 
-    // The address comes back from arithmetic on integers.
-    void through_integer(float *map, unsigned long where) {
+    // Where the sweep begins was never set.
+    void clear(float *map) {
     #pragma HLS INTERFACE mode=m_axi port=map bundle=map
-        for (int i = 0; i < 1024; ++i) {
-            unsigned long address = ((unsigned long)map ^ where) + i * 4ul;
-            *(float *)address = 0;
-        }
+        int first;
+        for (int i = 0; i < 4096; ++i) map[first + i] = 0;
     }
 
 Fast::
 
-    // The argument itself is indexed.
-    void through_index(float *map) {
+    // It begins where the map does.
+    void clear(float *map) {
     #pragma HLS INTERFACE mode=m_axi port=map bundle=map
-        for (int i = 0; i < 1024; ++i) map[i] = 0;
+        int first = 0;
+        for (int i = 0; i < 4096; ++i) map[first + i] = 0;
     }
 
 Sources: none needed.

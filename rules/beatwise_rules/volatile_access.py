@@ -58,7 +58,7 @@ def find(facts: Facts) -> Iterator[Finding]:
             site,
             message=f"{name} {PASSIVE[access.direction]} through a volatile pointer, one element at a time.",
             because=(
-                f"Each iteration of {the_loop(moving_loop(access))} makes its own access of {size(access.element_bytes)}: "
+                f"Each iteration of {the_loop(moving_loop(access))} makes an access of {size(access.element_bytes)}: "
                 "`volatile` forbids to join, widen or advance it.",
                 f"Without it a burst of this port holds {size(burst_bytes(facts, worst))}.",
             ),

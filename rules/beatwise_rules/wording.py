@@ -79,10 +79,13 @@ def lines(numbers: Iterable[int]) -> str:
 
 
 def the_loop(loop: LoopInstance) -> str:
-    """A loop, by the name of its counter where it has one."""
+    """A loop, by its label or the name of its counter where it has one."""
+    line = loop.place.line
     if loop.kind == "copy":
-        return f"the copy on line {loop.place.line}"
-    name, line = loop.counter.name, loop.place.line
+        return f"the copy on line {line}"
+    if loop.label:
+        return f"loop `{loop.label}` (line {line})"
+    name = loop.counter.name
     return f"the loop over `{name}` (line {line})" if name.isidentifier() else f"the loop on line {line}"
 
 

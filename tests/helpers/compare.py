@@ -42,7 +42,9 @@ def disagreements(truth: Truth, document: Mapping[str, Any]) -> list[str]:
     kernels = [kernel for kernel in document["kernels"] if kernel["name"] == truth.top]
     if len(kernels) != 1:
         return [f"{len(kernels)} kernels named {truth.top}; problems: {document['problems']}"]
-    return wrong_accesses(truth, kernels[0]["accesses"]) + wrong_findings(truth, document["findings"])
+    return wrong_accesses(truth, kernels[0]["accesses"]) + wrong_findings(
+        truth, [finding for finding in document["findings"] if finding["kernel"] == truth.top]
+    )
 
 
 def wrong_accesses(truth: Truth, entries: list[Mapping[str, Any]]) -> list[str]:

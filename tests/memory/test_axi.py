@@ -96,9 +96,7 @@ def test_runs_are_cut_at_4096_bytes_and_at_the_limit() -> None:
     assert split(0, 0, 64, 16) == ()
 
 
-@given(
-    start=st.integers(0, 1 << 20), size=st.integers(0, 20_000), beat=BEATS, limit=st.integers(1, 2 * LONGEST_BEATS)
-)
+@given(start=st.integers(0, 1 << 20), size=st.integers(0, 20_000), beat=BEATS, limit=st.integers(1, 2 * LONGEST_BEATS))
 def test_the_bursts_of_a_run_visit_each_of_its_bytes_once(start: int, size: int, beat: int, limit: int) -> None:
     visited: list[int] = []
     address = start

@@ -111,8 +111,11 @@ def test_findings_come_dearest_first_and_those_without_a_price_last() -> None:
 
 
 def test_what_is_said_of_several_arguments_alike_is_said_once() -> None:
-    both = [finding(30 + i, argument=f"s{i}", interface=f"s{i}", message=f"`s{i}` is bad (line {30 + i}).") for i in (1, 2)]
-    text = audit_text(survey(scatter(findings=tuple(both))))
+    both = tuple(
+        finding(line, argument=name, interface=name, message=f"`{name}` is bad (line {line}).", because=())
+        for line, name in ((31, "s1"), (32, "s2"))
+    )
+    text = audit_text(survey(scatter(findings=both)))
     assert text.count("is bad") == 1
     assert f"likewise  {FILE}:32 `s2`" in text
 

@@ -126,10 +126,18 @@ class Kernel:
         walk = Walk(pattern, stride, run, basis, executions, start_multiple=multiple, run_multiple=multiple)
         self.traffic.append(
             Traffic(
-                access, walk, width or element * 8, beats, tuple(blocked), now, could, limit, dict(limits or {limit: now}),
-                None if executions is None else executions * part_bytes,
+                access=access,
+                walk=walk,
+                width_bits=width or element * 8,
+                burst_beats=beats,
+                blocked=tuple(blocked),
+                now_gbps=now,
+                could_gbps=could,
+                limit=limit,
+                limits=dict(limits or {limit: now}),
+                bytes_moved=None if executions is None else executions * part_bytes,
             )
-        )  # fmt: skip
+        )
         return self
 
     def clean(self, argument: str, line: int, loops: Sequence[LoopInstance], **more: object) -> Kernel:

@@ -41,7 +41,10 @@ def script(text: str) -> list[str]:
         ("HLS interface m_axi port=gates", "interface m_axi port=<gates> mode=<m_axi>"),
         ("hls Interface M_AXI PORT=Gates", "interface m_axi port=<Gates> mode=<m_axi>"),
         ("HLS INTERFACE MODE = M_AXI port =gates bundle= g0", "interface mode=<m_axi> port=<gates> bundle=<g0>"),
-        ('HLS interface m_axi port=gates bundle="g 0" depth=4', "interface m_axi port=<gates> bundle=<g 0> depth=<4> mode=<m_axi>"),
+        (
+            'HLS interface m_axi port=gates bundle="g 0" depth=4',
+            "interface m_axi port=<gates> bundle=<g 0> depth=<4> mode=<m_axi>",
+        ),
         ("HLS interface m_axi port=a, bundle=g0", "interface m_axi port=<a> bundle=<g0> mode=<m_axi>"),
         ("HLS interface register s_axilite port=n", "interface register s_axilite port=<n> mode=<s_axilite>"),
         ("  HLS\tpipeline  II=1\trewind ", "pipeline ii=<1> rewind"),
@@ -51,7 +54,10 @@ def script(text: str) -> list[str]:
         ("HLS loop_tripcount min=1 max=(N + 1) * 2 avg = N/2", "loop_tripcount min=<1> max=<(N + 1) * 2> avg=<N/2>"),
         ("HLS unroll factor=least(A, B) region", "unroll factor=<least(A, B)> region"),
         ("HLS unroll factor=Sizes<4, 2>::lanes region", "unroll factor=<Sizes<4, 2>::lanes> region"),
-        ("HLS array_partition variable=a, b cyclic factor=4 dim=1", "array_partition variable=<a, b> cyclic factor=<4> dim=<1> type=<cyclic>"),
+        (
+            "HLS array_partition variable=a, b cyclic factor=4 dim=1",
+            "array_partition variable=<a, b> cyclic factor=<4> dim=<1> type=<cyclic>",
+        ),
         ("HLS array_partition variable=a,b type=complete", "array_partition variable=<a,b> type=<complete>"),
         ("HLS dependence variable=sums inter false", "dependence variable=<sums> inter false type=<inter>"),
         ("HLS stream variable=fifo[2] depth=64 // deep", "stream variable=<fifo[2]> depth=<64>"),
@@ -60,7 +66,7 @@ def script(text: str) -> list[str]:
         ("HLS unroll factor=", "unroll factor"),
         ("HLS unroll 4 ) =", "unroll"),
     ],
-)  # fmt: skip
+)
 def test_a_directive_is_its_kind_and_its_options(written: str, read: str) -> None:
     directive = parse_directive(written, HERE)
     assert directive is not None
@@ -146,12 +152,10 @@ def test_a_text_may_end_anywhere(ending: str) -> None:
     assert pragmas_in(f"#pragma HLS inline\n{ending}", "echo.cpp")[0].kind == "inline"
 
 
-HOSTILE = [
-    "/*", '"', "'", 'R"(', 'R"x', "#", "# ", "#\n", "/**/", "\\\n", "\\ ", " ", "(", "a=", ",", "é", "*", "#pragma HLS x y=( /*\n",
-]  # fmt: skip
+HOSTILE = ["/*", '"', "'", 'R"(', 'R"x', "#", "# ", "#\n", "/**/", "\\\n", "\\ ", " ", "(", "a=", ",", "é", "*"]
 
 
-@pytest.mark.parametrize("piece", HOSTILE)
+@pytest.mark.parametrize("piece", [*HOSTILE, "#pragma HLS x y=( /*\n"])
 def test_reading_takes_linear_time(piece: str) -> None:
     started = time.process_time()
     pragmas_in(piece * (400_000 // len(piece)), "echo.cpp")

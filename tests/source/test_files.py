@@ -137,7 +137,7 @@ def test_a_link_out_of_its_folder_is_refused_even_by_name(here: Path) -> None:
         "#define DO(x) _Pragma(#x)\nvoid f(int *p) { DO(HLS interface m_axi port=p) }",
         "#define PORT(x) _Pragma(\"HLS interface m_axi port=x\")\nvoid f(int *p) { PORT(p) }",
         '#include <ap_int.h>\nextern "C" void f(const ap_uint<512> *p) { }',
-        '#include <ap_int.h>\n#ifdef __cplusplus\nextern "C" {\n#endif\nvoid f(const int p[4]) { }\n#ifdef __cplusplus\n}\n#endif',
+        '#include <ap_int.h>\n#ifdef X\nextern "C" {\n#endif\nvoid f(const int p[4]) { }\n#ifdef X\n}\n#endif',
         'extern "C" { void f(int *p); }\nvoid f(int *p) {\n#pragma HLS PIPELINE\n}',
         'extern "C" void f(hls::burst_maxi<int> p) { }',
     ],

@@ -12,10 +12,29 @@ from beatwise.source import pragmas_in
 from beatwise.source.lexis import code_only, lexemes
 
 PIECES = [
-    *("// c ", "/* c */", "/* a\nb */", "/**/", "//\\\n", "\n", "\\\n", "\\ \n", " ", "\t", "x", "FR", "1'000", "0x1'f", "/", "*", "é"),
-    *('"s // "', '"a\\"b"', '"//"', "'x'", "'\"'", "'\\''", "u'a'", 'L"k"', 'R"(" // \n)"', 'u8R"t(x)" )t"', 'LR"q(/*)q"'),
-    *("#define A ", "#pragma HLS ", "# pragma HLS ", "#pragma\tHLS ", "#pragma HLS pipeline /* q\n r */", "#pragma HLS pipeline // q"),
-]  # fmt: skip
+    *("// c ", "/* c */", "/* a\nb */", "/**/", "//\\\n", "\n", "\\\n", "\\ \n", " ", "\t"),
+    *("x", "FR", "1'000", "0x1'f", "/", "*", "é", "#define A "),
+    *(
+        '"s // "',
+        '"a\\"b"',
+        '"//"',
+        "'x'",
+        "'\"'",
+        "'\\''",
+        "u'a'",
+        'L"k"',
+        'R"(" // \n)"',
+        'u8R"t(x)" )t"',
+        'LR"q(/*)q"',
+    ),
+    *(
+        "#pragma HLS ",
+        "# pragma HLS ",
+        "#pragma\tHLS ",
+        "#pragma HLS pipeline /* q\n r */",
+        "#pragma HLS pipeline // q",
+    ),
+]
 PRAGMA = re.compile(r"\bHLS ")
 
 

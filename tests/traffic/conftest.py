@@ -3,9 +3,9 @@
 from __future__ import annotations
 
 import pytest
-from traffic.nests import walk_by_counting
 
 from beatwise.traffic import runs
+from traffic.nests import walk_by_counting
 
 
 @pytest.fixture(autouse=True)

@@ -72,7 +72,9 @@ def trace(*accesses: Access, ports: Mapping[str, Mapping[str, Any]] | None = Non
     return Trace("sweep", "sweep.cpp", place(), tuple(interfaces), accesses, (), (), {}, (), (), ())
 
 
-def traffic(*accesses: Access, board: Board = HBM, **ports: Mapping[str, Any]) -> tuple[Traffic, ...]:
+def traffic(
+    *accesses: Access, board: Board = HBM, ports: Mapping[str, Mapping[str, Any]] | None = None
+) -> tuple[Traffic, ...]:
     """What is measured about each of them."""
     return measure(trace(*accesses, ports=ports), board, {}).traffic
 
@@ -99,11 +101,10 @@ def walk_by_counting(access: Access, given: Mapping[str, int]) -> Walk:
             starts.append(offset)
     usual = max(sorted(set(steps)), key=steps.count)
     pattern: Any = {size: "sequential", -size: "descending", 0: "repeated"}.get(usual, "strided")
-    if any(symbol.kind == "data" for symbol in access.offset.leaves()):
-        pattern, usual = "indirect", None
+    by_data = any(symbol.kind == "data" for symbol in access.offset.leaves())
     return Walk(
-        pattern, usual, sum(lengths) / len(lengths), "constant", float(len(visited)),
-        start_multiple=_shared(starts), run_multiple=_shared([length * size for length in lengths]),
+        "indirect" if by_data else pattern, None if by_data else usual, sum(lengths) / len(lengths), "constant",
+        float(len(visited)), None, _shared(starts), _shared([length * size for length in lengths]),
     )  # fmt: skip
 
 

@@ -7,16 +7,16 @@ from dataclasses import replace
 import pytest
 from hypothesis import given
 from hypothesis import strategies as st
-from traffic.nests import DDR, HBM, at, drawn, loop, place, read, traffic
 
 from beatwise.model.access import Access, Interface
 from beatwise.model.form import number
 from beatwise.model.traffic import Traffic, Walk
 from beatwise.traffic.bursts import beat_bytes, burst_beats
+from traffic.nests import DDR, HBM, at, drawn, loop, place, read, traffic
 
 
 def only(access: Access, **port: int) -> Traffic:
-    (item,) = traffic(access, **{access.interface: port})
+    (item,) = traffic(access, ports={access.interface: port})
     return item
 
 

@@ -9,13 +9,13 @@ import pytest
 from hypothesis import HealthCheck, settings
 from hypothesis import given as sampled
 from hypothesis import strategies as st
-from traffic.nests import DDR, HBM, at, drawn, loop, read, trace, traffic, write
 
-from beatwise.model.access import Access
+from beatwise.model.access import Access, LoopInstance
 from beatwise.model.board import Board
 from beatwise.model.form import negation, number
 from beatwise.model.traffic import PortTraffic, Traffic
 from beatwise.traffic import measure
+from traffic.nests import DDR, HBM, at, drawn, loop, read, trace, traffic, write
 
 BOTH = pytest.mark.parametrize("on", [HBM, DDR], ids=lambda on: str(on.name))
 
@@ -82,9 +82,31 @@ def test_single_writes_are_held_by_gaps() -> None:
 def test_few_outstanding_hold_reads_back() -> None:
     """One burst of 16 beats at a time: 1024 bytes in 253 ns and 19.2 cycles."""
     i = loop("i", 4096)
-    (item,) = traffic(read("in", at(i) * 64, i, size=64), **{"in": {"read_outstanding": 1}})
+    (item,) = traffic(read("in", at(i) * 64, i, size=64), ports={"in": {"read_outstanding": 1}})
     assert item.limit == "requests"
     assert item.now_gbps == pytest.approx(1024 / (253 + 64))
+
+
+def test_many_outstanding_are_held_by_the_request_rate() -> None:
+    """64 bytes in every 4 cycles of 300 MHz."""
+    i = loop("i", 4096)
+    (item,) = traffic(read("in", at(i) * 4096, i, size=64), ports={"in": {"read_outstanding": 128}})
+    assert item.limit == "requests"
+    assert item.now_gbps == pytest.approx(4.8)
+
+
+def test_an_element_of_12_bytes_leaves_part_of_its_beat_empty() -> None:
+    i = loop("i", 1001)
+    item = only(read("in", at(i) * 12, i, size=12))
+    assert (item.width_bits, item.limit) == (128, "width")
+    assert item.now_gbps == pytest.approx(12 * 0.3)
+
+
+def test_elements_of_12_bytes_fill_the_beats_of_a_widened_port() -> None:
+    i = loop("i", 1024)
+    item = only(read("in", at(i) * 12, i, size=12))
+    assert (item.width_bits, item.limit) == (512, "channel")
+    assert item.limits["port"] == pytest.approx(19.2)
 
 
 def test_a_wide_single_beat_wastes_no_granule_but_a_narrow_one_does() -> None:
@@ -102,9 +124,12 @@ def test_part_of_a_record_gets_part_of_the_rate() -> None:
     assert item.could_gbps == HBM.read_cap_gbps
 
 
-def test_the_parts_of_a_record_together_get_the_whole_rate() -> None:
+@pytest.mark.parametrize(
+    "names", [("north", "east", "south", "west"), ("[]", "[]", "[]", "[]")], ids=["fields", "lanes"]
+)
+def test_the_parts_of_a_record_together_get_the_whole_rate(names: tuple[str, ...]) -> None:
     i = loop("i", 4096)
-    items = traffic(*(read("cells", at(i) * 16 + 4 * k, i, size=16, part_bytes=4) for k in range(4)))
+    items = traffic(*(read("cells", at(i) * 16, i, size=16, part_bytes=4, covers=name) for name in names))
     assert [item.loss_gbps for item in items] == [pytest.approx(0.0)] * 4
     assert sum(item.now_gbps for item in items) == pytest.approx(HBM.read_cap_gbps)
 
@@ -121,10 +146,11 @@ def test_stores_in_both_branches_share_the_rate() -> None:
     i = loop("i", 4096)
     wet = drawn(i)
 
-
     items = traffic(*(write("out", at(i) * 4, i, guards=(guard,)) for guard in (wet, negation(wet))))
     assert sum(item.now_gbps for item in items) == pytest.approx(HBM.write_cap_gbps)
     assert [item.loss_gbps for item in items] == [pytest.approx(0.0)] * 2
+    alone = only(write("out", at(i) * 4, i))
+    assert [item.limits["gaps"] for item in items] == [pytest.approx(alone.limits["gaps"] / 2)] * 2
 
 
 def test_two_arrays_on_one_port_get_half_each() -> None:
@@ -167,6 +193,18 @@ def test_processes_side_by_side_share_a_port() -> None:
     )
     assert [item.now_gbps for item in traffic(*pair)] == [HBM.read_cap_gbps / 2] * 2
     assert ports(*pair)["g"].now_gbps == pytest.approx(HBM.read_cap_gbps)
+
+
+@BOTH
+def test_processes_share_every_limit_of_a_port(on: Board) -> None:
+    i, j = loop("i", 4096), loop("j", 4096)
+    slow = replace(on, port_bits=64)
+    one = read("a", at(i) * 4, i, interface="g", process="load_a", guards=(drawn(i),))
+    other = replace(one, loops=(j,), offset=at(j) * 4, guards=(), process="load_b")
+    (alone,), (beside, _) = traffic(one, board=slow), traffic(one, other, board=slow)
+    assert alone.could_gbps == pytest.approx(2.4)
+    assert beside.could_gbps == pytest.approx(1.2)
+    assert beside.limits == {name: pytest.approx(limit / 2) for name, limit in alone.limits.items()}
 
 
 @BOTH
@@ -221,13 +259,13 @@ def kernels(draw: st.DrawFn) -> tuple[Access, ...]:
     accesses = []
     for _ in range(draw(st.integers(1, 5))):
         size = draw(st.sampled_from((1, 4, 12, 16, 64, 128, 256)))
-        nest = draw(st.sampled_from(((), tuple(loops[:1]), tuple(loops))))
+        nest: tuple[LoopInstance, ...] = draw(st.sampled_from(((), tuple(loops[:1]), tuple(loops))))
         offset = number(size * draw(st.integers(0, 3)))
         for each in nest:
             offset = offset + at(each) * (size * draw(st.integers(-2, 40)))
-        if nest and draw(st.booleans()):
+        if draw(st.booleans()) and nest:
             offset = offset + drawn(*nest) * size
-        guards = (drawn(*nest),) if nest and draw(st.booleans()) else ()
+        guards = (drawn(*nest),) if draw(st.booleans()) and nest else ()
         make = draw(st.sampled_from((read, write)))
         name = draw(st.sampled_from("abc"))
         part = draw(st.sampled_from((size, max(1, size // 4))))

@@ -8,8 +8,19 @@ from beatwise.frontend import kinds
 from beatwise.frontend.initials import braced
 from beatwise.frontend.libclang import Cursor, children, library
 from beatwise.frontend.lowering import Lowering, operands
-from beatwise.model.kernel import Declare, Expression, Literal, Lost, Statement, Variable
-from beatwise.model.types import StreamType, Type
+from beatwise.model.kernel import (
+    Declare,
+    Expression,
+    Index,
+    Literal,
+    Lost,
+    Member,
+    Name,
+    Opaque,
+    Statement,
+    Variable,
+)
+from beatwise.model.types import ArrayType, IntType, RecordType, ReferenceType, StreamType, Type
 
 IGNORED = frozenset({20, 33, 34, 35, 36, 601, *kinds.RECORDS, kinds.ENUM, kinds.FUNCTION, kinds.FUNCTION_TEMPLATE})
 
@@ -29,8 +40,27 @@ def declared(given: Lowering, cursor: Cursor) -> list[Statement]:
                     given.scope.constants[given.name(one)] = library().clang_getEnumConstantDeclValue(one)
         return []
     if cursor.kind == kinds.UNEXPOSED_DECLARATION:
-        return []
+        return _decomposed(given, cursor)
     return [Lost("a declaration of a kind not known here", given.place(cursor))]
+
+
+def _decomposed(given: Lowering, cursor: Cursor) -> list[Statement]:
+    """``auto [a, b] = value``: one variable without a name; the names stand for its parts."""
+    names = [one for one in children(cursor) if one.kind == kinds.UNEXPOSED_DECLARATION]
+    if not names:
+        return []
+    whole = variable(given, cursor)
+    of = whole.type.to if isinstance(whole.type, ReferenceType) else whole.type
+    used = Name(whole.key, whole.name, of, whole.place)
+    for index, one in enumerate(names):
+        part_type, place = given.type(one), given.place(one)
+        part: Expression = Opaque("a part of a decomposed value", (used,), part_type, place)
+        if isinstance(of, RecordType) and index < len(of.fields):
+            part = Member(used, of.fields[index].name, part_type, place)
+        elif isinstance(of, ArrayType):
+            part = Index(used, Literal(index, IntType(32, True, 4), place), part_type, place)
+        given.bindings[one.identity or 0] = part
+    return [Declare(whole, whole.place)]
 
 
 def _lost_value(given: Lowering, cursor: Cursor, made: Variable) -> Lost | None:
@@ -75,6 +105,8 @@ def initial_value(given: Lowering, cursor: Cursor, of: Type) -> Expression | Non
         return None
     if value.kind == kinds.BRACED:
         return braced(given, value, of)
+    if isinstance(of, ArrayType) and value.kind == kinds.UNEXPOSED and (parts := operands(value)):
+        return given.expression(parts[0])  # a copy of a whole array
     return given.expression(value)
 
 

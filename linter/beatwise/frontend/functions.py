@@ -10,7 +10,7 @@ from beatwise.frontend.libclang import Cursor, children, evaluated, library, usr
 from beatwise.frontend.lowering import Lowering, Scope, default_of
 from beatwise.frontend.options import with_numbers
 from beatwise.frontend.statements import block, named_by, told
-from beatwise.model.kernel import Block, Directive, Expression, Function, Variable
+from beatwise.model.kernel import Directive, Expression, Function, Variable
 from beatwise.model.types import RecordType, Type
 
 
@@ -28,10 +28,11 @@ def function(given: Lowering, key: str, definition: Cursor, script: tuple[Direct
             for index in range(max(0, lib.clang_Cursor_getNumArguments(definition)))
         ]
         initializers, body_cursor = _parts(given, definition)
-        body = block(given, body_cursor) if body_cursor is not None else None
         outside = tuple(with_numbers(one, given.constant) for one in script if "label" not in one.options)
+        scope.unclaimed += [one for one in outside if named_by(one)]
+        body = block(given, body_cursor) if body_cursor is not None else None
         directives = (*(body.directives if body else ()), *outside)
-        parameters, body = _with_directives(given, parameters, body, outside)
+        parameters = _told_parameters(given, parameters)
     finally:
         given.scope = outer
     return Function(
@@ -146,17 +147,13 @@ def _defaults(given: Lowering, constructor: Cursor, named: set[str]) -> list[tup
     return found
 
 
-def _with_directives(
-    given: Lowering, parameters: list[Variable], body: Block | None, outside: tuple[Directive, ...]
-) -> tuple[list[Variable], Block | None]:
+def _told_parameters(given: Lowering, parameters: list[Variable]) -> list[Variable]:
     """The directives that no block's variables answered to reach parameters, else globals of the program."""
-    unclaimed = [*given.scope.unclaimed, *(one for one in outside if named_by(one))]
     names = {one.name: index for index, one in enumerate(parameters)}
-    for directive in unclaimed:
+    for directive in given.scope.unclaimed:
         for name in named_by(directive):
             if name in names:
                 parameters[names[name]] = told(parameters[names[name]], directive)
             else:
                 given.far_directives.append((name, directive))
-    return parameters, body
-
+    return parameters

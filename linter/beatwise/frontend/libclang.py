@@ -13,6 +13,8 @@ from ctypes import CFUNCTYPE, POINTER, Structure, byref, c_char_p, c_int, c_long
 from pathlib import Path
 from typing import Any
 
+from beatwise.frontend.prelude import INVENTED
+
 
 class Cursor(Structure):
     """CXCursor: a declaration, statement, expression or reference. ``data[0]`` identifies a declaration."""
@@ -224,6 +226,11 @@ def spelling(cursor: Cursor) -> str:
 def usr(cursor: Cursor) -> str:
     """The name of a declaration that is the same in every file."""
     return text(library().clang_getCursorUSR(cursor))
+
+
+def is_stand_in(usr: str) -> bool:
+    """Whether a USR is that of a declaration in the namespace of the stand-ins."""
+    return usr.startswith(f"c:@N@{INVENTED}@")
 
 
 def evaluated(cursor: Cursor) -> int | float | str | None:

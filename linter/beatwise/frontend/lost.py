@@ -14,7 +14,7 @@ NOISE = re.compile(
 )
 MACRO_USE = re.compile(rb"\b([A-Za-z_]\w*)\s*(\((?:[^()]|\([^()]*\))*\))?")
 WORD = re.compile(rb"\w")
-REASON = "the compiler could not resolve a name in this statement and left it out"
+REASON = "the compiler could not read what stands here and left it out"
 
 
 def lost_between(given: Lowering, compound: Cursor, listed: list[Cursor]) -> list[tuple[int, Lost]]:
@@ -50,14 +50,10 @@ def _statements(given: Lowering, file: GivenFile, start: int, end: int) -> list[
     for use in MACRO_USE.finditer(bytes(text)):
         if use[1].decode() in given.macro_names:
             _blank(text, use.start(), use.end())
-    found, position = [], 0
-    for piece in bytes(text).split(b";"):
-        if WORD.search(piece):
-            inner = len(piece) - len(piece.lstrip())
-            first = start + position + inner
-            found.append(Lost(REASON, file.place(first, start + position + len(piece.rstrip()))))
-        position += len(piece) + 1
-    return found
+    plain = bytes(text).replace(b";", b" ")
+    if not WORD.search(plain):
+        return []
+    return [Lost(REASON, file.place(start + len(plain) - len(plain.lstrip()), start + len(plain.rstrip())))]
 
 
 def _blank(text: bytearray, start: int, end: int) -> None:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from bisect import bisect_left
+from collections import deque
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass, field
 
@@ -13,11 +14,11 @@ from beatwise.frontend.libclang import (
     TranslationUnit,
     children,
     evaluated,
+    is_stand_in,
     library,
     spelling,
     usr,
 )
-from beatwise.frontend.prelude import INVENTED
 from beatwise.frontend.places import GivenFile, Places
 from beatwise.frontend.types import POINTER, Types
 from beatwise.model.kernel import Directive, Expression, FunctionName, Opaque, Statement, Variable
@@ -79,7 +80,9 @@ class Lowering:
         self.bindings: dict[int, Expression] = {}  #: what the names of ``auto [a, b] = ...`` stand for
         self.used_globals: dict[str, Cursor] = {}
         self.far_directives: list[tuple[str, Directive]] = []  #: those that name a variable of no function
-        self.pending: list[tuple[str, Cursor]] = []  #: functions to lower: key, definition
+        self.defined_globals: dict[str, Cursor] = {}  #: by key
+        self.has_pragma_operators = any(b"_Pragma" in file.contents for file in files.values())
+        self.pending: deque[tuple[str, Cursor]] = deque()  #: functions to lower: key, definition
         self.linked: Mapping[str, tuple[Lowering, Cursor]] = {}  #: definitions of all units, by USR
         self.constants: dict[str, Cursor] = {}  #: constants and enumerators outside functions, by name
         self.macros: dict[str, str] = {}  #: object-like ones of the user, by name
@@ -137,8 +140,9 @@ class Lowering:
     def use(self, declaration: Cursor) -> None:
         """Remember a global that lowered code names: it becomes part of the program."""
         if declaration.kind == kinds.VARIABLE and self.is_global(declaration):
-            self.bindings: dict[int, Expression] = {}  #: what the names of ``auto [a, b] = ...`` stand for
-        self.used_globals.setdefault(self.variable_key(declaration), declaration)
+            key = self.variable_key(declaration)
+            if key not in self.globals:
+                self.used_globals[key] = declaration
 
     # ----------------------------------------------------------------------------------------------------- constants
 
@@ -154,7 +158,7 @@ class Lowering:
             known = self._invented.get(identity)
             if known is None:
                 self._invented[identity] = False  # while it is looked at
-                known = INVENTED in usr(cursor) or any(self.is_invented(child) for child in children(cursor))
+                known = is_stand_in(usr(cursor)) or any(self.is_invented(child) for child in children(cursor))
                 self._invented[identity] = known
             return known
         if cursor.kind in (kinds.DECLARATION_REFERENCE, kinds.TYPE_REFERENCE, kinds.TEMPLATE_REFERENCE, kinds.MEMBER):

@@ -3,9 +3,8 @@
 from __future__ import annotations
 
 from beatwise.frontend import kinds
-from beatwise.frontend.libclang import Cursor, library, usr
+from beatwise.frontend.libclang import Cursor, is_stand_in, library, usr
 from beatwise.frontend.lowering import Lowering
-from beatwise.frontend.prelude import INVENTED
 from beatwise.model.kernel import Expression, FunctionName, Literal, Name, Opaque, This, Unary
 from beatwise.model.types import ArrayType, CallableType, PointerType, RecordType, Type, VoidType
 
@@ -35,7 +34,7 @@ def _variable(given: Lowering, cursor: Cursor, declaration: Cursor) -> Expressio
     exact = lib.clang_getCursorType(cursor)
     of = given.types.of_variable(declaration, exact)
     place = given.place(cursor)
-    if given.inventions and declaration.kind == kinds.VARIABLE and INVENTED in usr(declaration):
+    if given.inventions and declaration.kind == kinds.VARIABLE and is_stand_in(usr(declaration)):
         return Literal(None, of, place)
     if declaration.kind == kinds.VARIABLE and given.types.is_constant(lib.clang_getCursorType(declaration)):
         value = given.folded(declaration) if not isinstance(of, ArrayType | PointerType | RecordType) else None

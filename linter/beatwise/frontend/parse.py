@@ -6,12 +6,9 @@ include of anything else, however it is spelled, finds nothing.
 
 from __future__ import annotations
 
-import atexit
 import functools
-import json
 import posixpath
 import re
-import tempfile
 from collections.abc import Mapping, Sequence
 from pathlib import Path
 
@@ -19,6 +16,7 @@ from beatwise.frontend.headers import INCLUDE_DIRECTORY, header_files
 from beatwise.frontend.libclang import TranslationUnit
 
 ROOT = "/_bw/given/1/2/3/4/5/6/7/8"  #: deep enough for names that begin with some ``../``
+NO_DISK = Path(__file__).with_name("no_disk.json")  #: describes a file system without files; all the compiler reads
 PRELUDE = "/_bw/prelude.h"
 INCLUDE = re.compile(rb'^[ \t]*#[ \t]*include[ \t]*["<]([^">\n]+)[">]', re.MULTILINE)
 
@@ -38,6 +36,7 @@ FLAGS = (
     "-Wno-everything",
     "-Wundef",
     "-D_Bool=bool",
+    "-Drestrict=__restrict",
     "-D_Pragma(x)=static_assert(1,x);",
 )
 
@@ -64,7 +63,7 @@ def parse(
     unsaved = {**_our_headers(), **files, **_detours(files)}
     unsaved.update((path, text.encode()) for path, text in (headers or {}).items())
     unsaved[PRELUDE] = prelude.encode()
-    arguments = [*FLAGS, f"-std={standard}", "-ivfsoverlay", _nothing_on_disk(), "-include", PRELUDE]
+    arguments = [*FLAGS, f"-std={standard}", "-ivfsoverlay", str(NO_DISK), "-include", PRELUDE]
     arguments += [f"-D{define}" for define in defines]
     arguments += [f"-I{folder}" for folder in _folders(files)]
     arguments += ["-isystem", INCLUDE_DIRECTORY]
@@ -98,12 +97,3 @@ def _detours(files: Mapping[str, bytes]) -> dict[str, bytes]:
 @functools.cache
 def _our_headers() -> dict[str, bytes]:
     return {path: text.encode() for path, text in header_files().items()}
-
-
-@functools.cache
-def _nothing_on_disk() -> str:
-    """The path of a description of an empty file system, the one file the compiler does read."""
-    with tempfile.NamedTemporaryFile("w", prefix="beatwise-", suffix=".yaml", delete=False) as file:
-        json.dump({"version": 0, "redirecting-with": "redirect-only", "roots": []}, file)
-    atexit.register(Path(file.name).unlink, missing_ok=True)
-    return file.name

@@ -10,7 +10,7 @@ INVENTED = "_BwInvented"  #: the namespace that holds every stand-in
 FIRST_VALUE, VALUE_STEP = 64, 16  #: invented values that C++ insists on; distinct, as case labels must be
 
 Scope = tuple[str, ...]  #: namespaces, outermost first; empty for the global one
-EntryKind = Word["type", "number type", "template", "constant", "bound", "function"]
+EntryKind = Word["type", "number type", "template", "constant", "bound", "variable", "function"]
 MemberKind = Word["value", "type", "function", "constant"]
 Parameter = Word["class", "auto"]
 
@@ -18,10 +18,12 @@ Parameter = Word["class", "auto"]
 @dataclass(slots=True)
 class Entry:
     """One stand-in. ``number type`` is a built-in type no source uses, for a type that must mix with numbers freely;
-    ``bound`` is a constant with a value that means nothing. ``signatures`` are the template parameter lists in use."""
+    ``bound`` is a constant with a value that means nothing. ``parameters`` are those of a template; ``declared`` are
+    methods that the source defines outside the class."""
 
     kind: EntryKind
-    signatures: set[tuple[Parameter, ...]] = field(default_factory=set)
+    parameters: tuple[Parameter, ...] = ()
+    declared: dict[str, None] = field(default_factory=dict)
     members: dict[str, MemberKind] = field(default_factory=dict)
     value: int = 0
 
@@ -65,22 +67,23 @@ def _declaration(name: str, entry: Entry) -> Iterator[str]:
         case "number type":
             yield f"typedef _BitInt(19) {name};"
         case "template":
-            widest = max(entry.signatures, key=len, default=("class",))
-            parameters = ", ".join(f"{kind} _BwP{at} = {_default(kind)}" for at, kind in enumerate(widest))
+            parameters = ", ".join(f"{kind} _BwP{at} = {_default(kind)}" for at, kind in enumerate(entry.parameters))
             yield f"template <{parameters}> struct {name} {_body(name, entry)}"
         case "constant":
             yield f"extern const int {name};"
         case "bound":
             yield f"constexpr int {name} = {entry.value};"
+        case "variable":
+            yield f"extern _BwAny {name};"
         case "function":
-            for signature in sorted(entry.signatures | {()}):
-                parameters = "".join(f"{kind} _BwP{at}, " for at, kind in enumerate(signature))
+            for count in range(len(entry.parameters) + 1):
+                parameters = "".join(f"{kind} _BwP{at}, " for at, kind in enumerate(entry.parameters[:count]))
                 yield f"template <{parameters}class... _BwA> _BwAny {name}(_BwA &&...);"
 
 
 def _body(name: str, entry: Entry) -> str:
     members = " ".join(_member(member, kind, "") for member, kind in entry.members.items())
-    return f": _BwAny {{ _BwStandIn({name}) {members} }};"
+    return f": _BwUsable {{ _BwStandIn({name}) {members} {' '.join(entry.declared)} }};"
 
 
 def _member(name: str, kind: MemberKind, storage: str) -> str:
@@ -88,7 +91,7 @@ def _member(name: str, kind: MemberKind, storage: str) -> str:
         case "value":
             return f"{storage}_BwAny {name};"
         case "type":
-            return f"struct {name} : _BwAny {{ _BwStandIn({name}) }};"
+            return f"struct {name} : _BwUsable {{ _BwStandIn({name}) }};"
         case "function":
             return (
                 f"template <class... _BwA> static _BwAny {name}(_BwA &&...);"

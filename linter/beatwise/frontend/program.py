@@ -21,6 +21,7 @@ from beatwise.frontend.repair import repaired
 from beatwise.frontend.places import GivenFile
 from beatwise.model.kernel import Directive, Function, Invention, Problem, Program, Variable
 from beatwise.model.types import ArrayType, BurstPointerType, PointerType, ReferenceType, StreamType
+from beatwise.frontend.statements import pragma
 from beatwise.source.directives import pragmas_in
 
 STACK_BYTES = 512 * 1024 * 1024  #: for the thread that lowers: expressions nest deeply
@@ -107,7 +108,7 @@ def _read(
     linked = {usr(cursor): (one, cursor) for one, cursor in reversed(definitions)}
     for one in units:
         one.linked = linked
-    tops = _named_tops(definitions, top) if top is not None else _likely_tops(definitions, directives)
+    tops = _named_tops(definitions, top) if top is not None else _likely_tops(definitions, directives, script)
     keys = [key for one, cursor in tops or definitions if (key := one.request(cursor))]
     functions = _lowered(units, script)
     if not tops:
@@ -173,6 +174,8 @@ def _survey(given: Lowering) -> list[Cursor]:
                     given.constants.setdefault(given.name(one), one)
         elif kind == kinds.VARIABLE and given.is_given(cursor):
             given.constants.setdefault(given.name(cursor), cursor)
+            if library().clang_isCursorDefinition(cursor):
+                given.defined_globals.setdefault(given.variable_key(cursor), cursor)
     return found
 
 
@@ -198,18 +201,41 @@ def _named_tops(definitions: Definitions, top: str) -> Definitions:
     return found
 
 
-def _likely_tops(definitions: Definitions, directives: Mapping[str, tuple[Directive, ...]]) -> Definitions:
+def _likely_tops(
+    definitions: Definitions, directives: Mapping[str, tuple[Directive, ...]], script: tuple[Directive, ...]
+) -> Definitions:
     """Those with memory-mapped interface directives, else those with C linkage and pointers among their parameters."""
     mapped = {
         (one.place.file, one.place.offset)
         for found in directives.values()
         for one in found
-        if one.kind == "interface" and one.options.get("mode", "").lower() == "m_axi"
+        if _is_mapped(one)
     }
-    with_directive = [(one, cursor) for one, cursor in definitions if _holds(one, cursor, mapped)]
+    named = {one.options.get("function", "").rpartition("::")[2] for one in script if _is_mapped(one)}
+    with_directive = [
+        (one, cursor)
+        for one, cursor in definitions
+        if one.name(cursor) in named or _holds(one, cursor, mapped) or _holds_macro_made(one, cursor)
+    ]
     if with_directive:
         return with_directive
     return [(one, cursor) for one, cursor in definitions if is_extern_c(cursor) and _has_memory(one, cursor)]
+
+
+def _is_mapped(directive: Directive) -> bool:
+    return directive.kind == "interface" and directive.options.get("mode", "").lower() == "m_axi"
+
+
+def _holds_macro_made(given: Lowering, cursor: Cursor) -> bool:
+    """Whether a memory-mapped interface directive in the outermost block of a function comes from a ``_Pragma``."""
+    if not given.has_pragma_operators:
+        return False
+    for body in children(cursor):
+        for statement in children(body) if body.kind == kinds.COMPOUND else ():
+            for one in children(statement) if statement.kind == kinds.DECLARATIONS else ():
+                if one.kind == kinds.STATIC_ASSERT and (found := pragma(given, one)) and _is_mapped(found):
+                    return True
+    return False
 
 
 def _holds(given: Lowering, cursor: Cursor, places: set[tuple[str, int]]) -> bool:
@@ -264,16 +290,20 @@ def _reachable(functions: Mapping[str, Function], keys: Sequence[str]) -> dict[s
 
 def _lowered(units: Sequence[Lowering], script: tuple[Directive, ...]) -> dict[str, Function]:
     functions: dict[str, Function] = {}
-    while any(one.pending for one in units):
+    while any(one.pending or one.used_globals for one in units):
         for one in units:
             while one.pending:
-                key, definition = one.pending.pop(0)
+                key, definition = one.pending.popleft()
+                if key in functions:  # of a header that several units include
+                    continue
                 name = one.name(definition)
                 mine = tuple(found for found in script if found.options.get("function", "").rpartition("::")[2] == name)
                 functions[key] = function(one, key, definition, mine)
-            for name, cursor in list(one.used_globals.items()):
-                if name not in one.globals:
-                    one.globals[name] = variable(one, cursor)
+            while one.used_globals:
+                key, cursor = one.used_globals.popitem()
+                if key not in one.globals:
+                    home = next((unit for unit in (one, *units) if key in unit.defined_globals), None)
+                    one.globals[key] = variable(home or one, home.defined_globals[key] if home else cursor)
     return functions
 
 

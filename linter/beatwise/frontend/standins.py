@@ -12,13 +12,13 @@ argument) it is a ``constexpr int`` whose value means nothing. Macros can't lie 
 from __future__ import annotations
 
 import re
-from collections.abc import Callable, Mapping, Sequence
+from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from typing import Literal as Word
 
 from beatwise.frontend.headers import INCLUDE_DIRECTORY, header_files
 from beatwise.frontend.prelude import INVENTED, Draft, Entry, EntryKind, MemberKind, Parameter, Scope
-from beatwise.frontend.uses import Kind, argument_lists, bare, kind_of, kinds, strongest
+from beatwise.frontend.uses import BUILT_IN, Kind, argument_lists, bare, kind_of, kinds, strongest
 
 WARNING, ERROR = 2, 3  #: as the compiler numbers severities; 4 is fatal
 
@@ -73,7 +73,7 @@ HOMES: tuple[tuple[str, tuple[str, ...]], ...] = (
         "numeric", "map", "queue", "type_traits", "cmath", "cstring", "cstdlib", "cstdio", "cstdint")),
 )
 
-InventionKind = Word["header", "include", "namespace", "type", "constant", "function", "macro", "member"]
+InventionKind = Word["header", "include", "namespace", "type", "constant", "variable", "function", "macro", "member"]
 
 
 @dataclass(frozen=True, slots=True)
@@ -154,15 +154,18 @@ class _Work:
         self.inventions: dict[tuple[str, str], Invention] = {}
         self.withdrawn: set[str] = set()
         self.done: set[tuple[str, ...]] = set()
+        self.wrong: list[Diagnostic] = []
 
     def repair(self, diagnostics: Sequence[Diagnostic]) -> bool:
         """Do the first class of repair that finds something to do."""
         self._tell_undefined_macros(diagnostics)
         wrong = [one for one in diagnostics if _matters(one)]
-        classes = (self._withdraw, self._headers, self._homes, self._namespaces, self._types, self._names, self._members, self._refit)
-        return any([any([work(one) for one in wrong]) for work in classes[:1]]) or any(
-            any([work(one) for one in wrong]) for work in classes[1:]
+        classes = (
+            *(self._withdraw, self._headers, self._homes, self._call_macros, self._shouted_macros, self._empty_macros, self._namespaces),
+            *(self._types, self._methods, self._names, self._members, self._refit),
         )
+        self.wrong = wrong
+        return any(any([repair(one) for one in wrong]) for repair in classes)
     # ------------------------------------------------------------------------------------------ the classes of repair
 
     def _tell_undefined_macros(self, diagnostics: Sequence[Diagnostic]) -> None:
@@ -212,7 +215,7 @@ class _Work:
         name, scope = _missing_name(one), self._scope(one)
         if one.text.startswith("expected namespace name"):
             name = self._word_at(one)
-        elif not name or self._guess(one, name, scope) != "namespace":
+        elif not name or self._guess(one, name) != "namespace":
             return False
         if not name or name in self.withdrawn or (*scope, name) in self.draft.namespaces:
             return False
@@ -220,39 +223,93 @@ class _Work:
         self._tell(name, "namespace", one)
         return True
 
+    def _call_macros(self, one: Diagnostic) -> bool:
+        """A macro with arguments that is written where no call can be."""
+        if found := re.match(r"function-like macro '(\w+)' is not defined", one.text):
+            return self._macro(found[1], f"{found[1]}(...)", one, "0")
+        name = _missing_name(one) or self._word_at(one)
+        if not name or self._text_from(one, name).lstrip()[:1] != "(":
+            return False
+        if re.search("type specifier is required for all declarations|requires a type specifier", one.text):
+            return self._macro(name, f"{name}(...)", one)
+        return _missing_name(one) is not None and self._guess(one, name) == "call macro" and self._macro(name, f"{name}(...)", one)
+
+    def _empty_macros(self, one: Diagnostic) -> bool:
+        """A macro without arguments that is written where no name can be."""
+        name = _missing_name(one)
+        return name is not None and self._guess(one, name) == "empty macro" and self._macro(name, name, one)
+
+    def _shouted_macros(self, one: Diagnostic) -> bool:
+        """Where the text makes no sense at all: its names in capitals that can be nothing but macros."""
+        if not re.match("expected|cannot combine|unexpected", one.text):
+            return False
+        changed = False
+        for name in re.findall(r"\b[A-Z_][A-Z0-9_]{2,}\b", self._line(one)):
+            if any(re.search(rf"#\s*define\s+{name}\b", text) for text in self.texts.values()) or self._entry(name):
+                continue
+            match strongest(kinds(name, self.texts.values())):
+                case "call macro":
+                    changed |= self._macro(name, f"{name}(...)", one)
+                case "empty macro":
+                    changed |= self._macro(name, name, one)
+        return changed
+
     def _types(self, one: Diagnostic) -> bool:
         name, scope = _missing_name(one), self._scope(one)
         if re.match("expected class name|expected template name", one.text):
             name = self._word_at(one)
-        if not name or not scope_is_namespace(one):
+        if not name or not _is_in_namespace(one):
             return False
-        kind: Kind = self._guess(one, name, scope)
-        if one.text.startswith("no template named"):
-            kind = "template" if kind != "function template" else kind
-        elif re.match("unknown type name|no type named|expected class name|unknown class name", one.text):
-            kind = kind if kind in ("template", "empty macro", "call macro") else "type"
-        if kind == "empty macro":
-            return self._macro(name, name, one)
+        kind: Kind = self._guess(one, name)
+        if one.text.startswith("no template named") and kind != "function template":
+            kind = "template"
+        elif re.match("no type named|expected class name|unknown class name", one.text) and kind != "template":
+            kind = "type"
+        elif one.text.startswith("unknown type name") and kind not in ("template", "type"):
+            bound = self._text_before(one).rstrip().endswith("[") or self._text_from(one, name).lstrip().startswith("]")
+            kind = "constant" if bound else "type"
         if kind == "template":
-            return self._invent(scope, name, Entry("template", self._signatures(name)), "type", one)
+            return self._invent(scope, name, Entry("template", self._parameters(name)), "type", one)
         return kind == "type" and self._invent(scope, name, Entry("type"), "type", one)
 
     def _names(self, one: Diagnostic) -> bool:
+        """A constant, variable or function."""
         name, scope = _missing_name(one), self._scope(one)
-        if re.search("type specifier is required for all declarations|requires a type specifier", one.text):
-            word = self._word_at(one)
-            return bool(word) and self._text_from(one, word).lstrip().startswith("(") and self._macro(word, f"{word}(...)", one)
-        if found := re.match(r"function-like macro '(\w+)' is not defined", one.text):
-            return self._macro(found[1], f"{found[1]}(...)", one, "0")
-        if not name or not scope_is_namespace(one):
+        if not name or not _is_in_namespace(one) or self._was_lost(name, one):
             return False
-        kind = self._guess(one, name, scope)
-        if kind == "call macro":
-            return self._macro(name, f"{name}(...)", one)
-        if kind in ("function", "function template"):
-            signatures = self._signatures(name) if kind == "function template" else set()
-            return self._invent(scope, name, Entry("function", signatures), "function", one)
-        return kind == "constant" and self._invent(scope, name, Entry("constant"), "constant", one)
+        kind = self._guess(one, name)
+        match kind:
+            case "function" | "function template":
+                parameters = self._parameters(name) if kind == "function template" else ()
+                return self._invent(scope, name, Entry("function", parameters), "function", one)
+            case "variable":
+                return self._invent(scope, name, Entry("variable"), "variable", one)
+            case _:
+                return self._invent(scope, name, Entry("constant"), "constant", one)
+
+    def _was_lost(self, name: str, one: Diagnostic) -> bool:
+        """Whether the name is declared on a line with another error, which may have cost it its declaration."""
+        declarator = re.compile(rf"[,\w>*&\]]\s*[*&]*\b{name}\s*[\[;=,(){{]")
+        for other in self.wrong:
+            if other.line <= one.line and other.file == one.file and _missing_name(other) != name:
+                line = self._line(other)
+                if declarator.search(line[: one.column - 1] if one.line == other.line else line):
+                    return True
+        return False
+
+    def _methods(self, one: Diagnostic) -> bool:
+        """A method of an unknown class, defined outside it."""
+        found = re.match(r"out-of-line definition of '(\w+)' does not match any declaration in '(?:\w+::)*(\w+)'", one.text)
+        entry = self._entry(found[2]) if found else None
+        if not found or entry is None:
+            return False
+        name, owner = found.groups()
+        heads = rf"(?:^|[;}}\n])\s*([\w:<>,&* \t]*?)\b{owner}\s*::\s*{name}\s*(\([^(){{}};]*\)\s*(?:const\b)?)"
+        methods = [f"{result.strip()} {name}{rest.strip()};" for text in self.texts.values() for result, rest in re.findall(heads, text)]
+        methods = [" ".join(method.split()) for method in methods]
+        new = [method for method in methods if method not in entry.declared]
+        entry.declared.update(dict.fromkeys(new))
+        return bool(new)
 
     def _members(self, one: Diagnostic) -> bool:
         """A member that a stand-in lacks."""
@@ -264,15 +321,15 @@ class _Work:
         after = self._text_from(one, name).lstrip()
         kind: MemberKind = "type" if what != "member" else "function" if re.match(r"<[^;]*>\s*\(", after) else "value"
         if kind == "value" and self._text_before(one).rstrip().endswith("::"):
-            kind = "function" if after.startswith("(") else "constant"
+            kind = "type" if re.match(r"[>&*\w]", after) else "function" if after.startswith("(") else "constant"
         if holder == "_BwAny":
             members = self.draft.of_any
         else:
-            entry = next((entry for (_, key), entry in self.draft.names.items() if key == holder), None)
+            entry = self._entry(holder)
             if entry is None:
                 return False
             members = entry.members
-        if name in members:
+        if members.get(name) == kind or (name in members and kind != "type"):
             return False
         members[name] = kind
         self._tell(name, "member", one)
@@ -280,34 +337,53 @@ class _Work:
 
     def _refit(self, one: Diagnostic) -> bool:
         """A stand-in that turns out to be of the wrong kind."""
-        line = self._line(one)
-        words = set(re.findall(r"[A-Za-z_]\w*", line))
+        text, word = one.text, self._word_at(one)
+        words = set(re.findall(r"[A-Za-z_]\w*", self._line(one)))
         here = {key: entry for key, entry in self.draft.names.items() if key[1] in words}
-        if NEEDS_VALUE.search(one.text):
-            loose = [entry for entry in here.values() if entry.kind == "constant"]
-            return self._make(loose or [entry for entry in self.draft.names.values() if entry.kind == "constant"], "bound")
-        word = self._word_at(one)
         at = [entry for (_, name), entry in here.items() if name == word]
-        if "type parameter must be a type" in one.text or "unknown type name" in one.text:
-            return self._make([entry for entry in at if entry.kind in ("constant", "bound")], "type") or self._flip(here, "auto")
-        if "non-type template parameter must be an expression" in one.text or "unexpected type name" in one.text:
-            return self._make([entry for entry in at if entry.kind == "type"], "bound") or self._flip(here, "class")
-        if "conditional expression is ambiguous" in one.text or "incompatible operand types" in one.text:
-            named = set(re.findall(r"\w+", one.text))
-            plain = [entry for (_, name), entry in self.draft.names.items() if name in named and entry.kind == "type" and not entry.members]
-            return self._make(plain, "number type")
-        if found := re.search(r"too (?:many|few) template arguments for (?:class|function|alias)?\s*template '(\w+)'", one.text):
-            entry = next((entry for (_, name), entry in self.draft.names.items() if name == found[1]), None)
-            return entry is not None and self._add_signatures(entry, found[1])
-        if re.search(r"called object type '(?:const )?int' is not a function|is not a function or function pointer", one.text):
-            return self._make([entry for entry in here.values() if entry.kind in ("constant", "bound")], "function")
-        if re.match(r"expected|use of undeclared|unexpected", one.text):
-            for scope, name in [key for key, entry in here.items() if entry.kind == "function" and re.fullmatch(r"[A-Z][A-Z0-9_]*", key[1])]:
+        if NEEDS_VALUE.search(text):
+            return self._make(_of(here.values(), "constant") or _of(self.draft.names.values(), "constant"), "bound")
+        if "negative size" in text:
+            less = {name for name in re.findall(r"-\s*(\w+)", self._line(one))}
+            return self._shrink([entry for (_, name), entry in here.items() if name in less])
+        if re.match("no matching function for call|cannot initialize|no matching member|assigning to", text):
+            loose = {key: entry for key, entry in self.draft.names.items() if entry.kind == "constant"}
+            inner = [entry for (_, name), entry in loose.items() if any(re.search(rf"\]\s*\[[^\]]*\b{name}\b", one) for one in self.texts.values())]
+            return self._make(inner, "bound")
+        if "type parameter must be a type" in text:
+            return self._make(_of(at, "constant", "bound"), "type") or self._flip(here, "auto")
+        if re.search("non-type template parameter must be an expression|unexpected type name|does not refer to a value", text):
+            return self._make(_of(at, "type"), "bound") or self._flip(here, "class")
+        if "conditional expression is ambiguous" in text or "incompatible operand types" in text:
+            named = set(re.findall(r"\w+", text))
+            plain = [entry for (_, name), entry in self.draft.names.items() if name in named and not entry.members]
+            return self._make(_of(plain, "type"), "number type")
+        if re.search("subscripted value is not|cannot assign to|member reference base type|indirection requires", text):
+            used = {name for name in words if re.search(rf"\b{name}\s*(?:\[|\.|->|[-+*/|&^]?=[^=]|\+\+|--)|\*\s*{name}\b", self._line(one))}
+            return self._make(_of([entry for (_, name), entry in here.items() if name in used], "constant"), "variable")
+        if re.search(r"called object type '(?:const )?int' is not a function|is not a function or function pointer", text):
+            return self._make(_of(here.values(), "constant", "bound"), "function")
+        if found := re.match(r"member initializer '(\w+)' does not name", text):
+            owners = [entry for (_, name), entry in here.items() if entry.kind == "type"]
+            return bool(owners) and self._first("member", found[1], one.file) and self._member(owners[0], found[1], one)
+        if re.match(r"expected|use of undeclared|unexpected", text):
+            for scope, name in [key for key, entry in here.items() if entry.kind == "function" and key[1].isupper()]:
                 if not scope and self._first("macro", name):
                     del self.draft.names[scope, name]
                     self.inventions.pop(("function", name), None)
                     return self._macro(name, f"{name}(...)", one)
         return False
+
+    def _member(self, entry: Entry, name: str, one: Diagnostic) -> bool:
+        entry.members.setdefault(name, "value")
+        self._tell(name, "member", one)
+        return True
+
+    def _shrink(self, entries: Sequence[Entry]) -> bool:
+        changed = [entry for entry in entries if entry.value > len(entries)]
+        for number, entry in enumerate(changed, 1):
+            entry.value = number
+        return bool(changed)
 
     # ----------------------------------------------------------------------------------------------- what they share
 
@@ -340,47 +416,55 @@ class _Work:
         return bool(entries)
 
     def _flip(self, here: Mapping[tuple[Scope, str], Entry], wrong: Parameter) -> bool:
-        """Make every parameter of the line's templates that was taken for the wrong kind the other one, once."""
-        changed = False
-        for (_, name), entry in here.items():
-            if entry.kind == "template" and self._first("flip", name, wrong):
-                right: Parameter = "class" if wrong == "class" else "auto"
-                entry.signatures = {tuple(right for _ in signature) for signature in entry.signatures}
-                changed = True
-        return changed
+        """Take every parameter of the line's templates for the other kind, once."""
+        changed = [entry for (_, name), entry in here.items() if entry.kind == "template" and self._first("flip", name, wrong)]
+        right: Parameter = "class" if wrong == "class" else "auto"
+        for entry in changed:
+            entry.parameters = (right,) * len(entry.parameters)
+        return bool(changed)
 
-    def _signatures(self, name: str) -> set[tuple[Parameter, ...]]:
-        return {tuple(self._parameter(text) for text in found) for found in argument_lists(name, self.texts.values())}
+    def _parameters(self, name: str) -> tuple[Parameter, ...]:
+        """The template parameters that all uses of the name together ask for."""
+        found: list[tuple[bool, Parameter]] = []
+        for arguments in argument_lists(name, self.texts.values()):
+            for at, argument in enumerate(arguments):
+                told = self._parameter(argument)
+                if at == len(found):
+                    found.append(told)
+                else:
+                    found[at] = max(found[at], told)
+        return tuple(kind for _, kind in found)
 
-    def _add_signatures(self, entry: Entry, name: str) -> bool:
-        before = len(entry.signatures)
-        entry.signatures |= self._signatures(name)
-        return len(entry.signatures) > before
+    def _parameter(self, argument: str) -> tuple[bool, Parameter]:
+        """Whether a template argument is a type or a value, and before that whether it is sure."""
+        if re.match(r"[\d'\"(!~-]|true\b|false\b|sizeof\b", argument) or re.search(r"\w\s*[+*/%-]\s*\w", argument):
+            return True, "auto"
+        if not re.fullmatch(r"[A-Za-z_]\w*", argument):
+            return True, "class"
+        for text in self.texts.values():
+            if re.search(rf"\b(?:int|unsigned|size_t|bool|auto|u?int\d+_t)\s+{argument}\b(?!\s*\()", text):
+                return True, "auto"
+            if re.search(rf"\b(?:typename|class|struct)\s+{argument}\b|\btypedef\b[^;]*\b{argument}\s*;|\busing\s+{argument}\s*=", text):
+                return True, "class"
+            if replaced := re.search(rf"#\s*define\s+{argument}\s+(\S+)", text):
+                return True, "auto" if re.match(r"[\d(]", replaced[1]) else "class"
+        if re.fullmatch(rf"{BUILT_IN}|half", argument):
+            return True, "class"
+        known = self._entry(argument)
+        if known is not None and known.kind in ("constant", "bound"):
+            return False, "auto"
+        return False, "class" if kinds(argument, self.texts.values()) & {"type", "template"} else "auto"
 
-    def _parameter(self, argument: str) -> Parameter:
-        """Whether a template argument is a type or a value."""
-        if re.fullmatch(r"[A-Za-z_]\w*", argument):
-            known = next((entry for (_, name), entry in self.draft.names.items() if name == argument), None)
-            if known is not None:
-                return "auto" if known.kind in ("constant", "bound") else "class"
-            if argument in ("true", "false"):
-                return "auto"
-            spelled = rf"\b{argument}\b"
-            if any(re.search(rf"(?:#\s*define\s+|\b(?:int|unsigned|size_t|bool|auto|uint\d+_t|int\d+_t)\s+){argument}\b(?!\s*\()", text) for text in self.texts.values()):
-                replaced = next((found[1] for text in self.texts.values() if (found := re.search(rf"#\s*define\s+{argument}\s+(\S+)", text))), "0")
-                return "auto" if re.match(r"[\d(]", replaced) or replaced.isupper() else "class"
-            return "class" if "type" in kinds(argument, self.texts.values()) or not argument.isupper() else "auto"
-        if re.match(r"[\d'\"(!~-]", argument) or re.fullmatch(r"[\w\s+*/()%-]+", argument) and re.search(r"[+*/%-]\s*\w", argument):
-            return "auto"
-        return "class"
-
-    def _guess(self, one: Diagnostic, name: str, scope: Scope) -> Kind:
-        """What the name is: all its uses speak, and the one complained about is heard where the others are silent."""
+    def _guess(self, one: Diagnostic, name: str) -> Kind:
+        """What the name is: all its uses speak, and so does the one complained about."""
         used = set(kinds(name, self.texts.values()))
-        here = kind_of(name, self._text_before(one), self._text_from(one, name))
+        here = kind_of(name, self._text_before(one), self._text_from(one, name)) if self._word_at(one) == name else None
         if here == "namespace" and "type" not in used and "template" not in used:
             return "namespace"
         return strongest({*used, *((here,) if here else ())})
+
+    def _entry(self, name: str) -> Entry | None:
+        return next((entry for (_, key), entry in self.draft.names.items() if key == name), None)
 
     def _scope(self, one: Diagnostic) -> Scope:
         """The namespaces in which the name was looked for."""
@@ -419,6 +503,10 @@ def _missing_name(one: Diagnostic) -> str | None:
     return found[1] if found else None
 
 
-def scope_is_namespace(one: Diagnostic) -> bool:
+def _is_in_namespace(one: Diagnostic) -> bool:
     """Whether the name was looked for in a namespace, not among the members of a class."""
-    return " in namespace " in one.text or " named " not in one.text or "global namespace" in one.text or " in '" not in one.text
+    return " in namespace " in one.text or " in '" not in one.text
+
+
+def _of(entries: Iterable[Entry], *wanted: EntryKind) -> list[Entry]:
+    return [entry for entry in entries if entry.kind in wanted]

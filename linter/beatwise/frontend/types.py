@@ -10,13 +10,13 @@ from beatwise.frontend.libclang import (
     Cursor,
     children,
     fields,
+    is_stand_in,
     library,
     location,
     spelling,
     text,
     usr,
 )
-from beatwise.frontend.prelude import INVENTED
 from beatwise.model.types import (
     ArrayType,
     BurstPointerType,
@@ -62,6 +62,7 @@ RECORD, ENUM, FUNCTION_NO_PROTO, FUNCTION, CONSTANT_ARRAY, VECTOR = 105, 106, 11
 INCOMPLETE_ARRAY, VARIABLE_ARRAY, MEMBER_POINTER, EXT_VECTOR = 114, 115, 117, 176
 PARAMETER, BASE_SPECIFIER = 10, 44  #: CXCursorKind
 INVENTED_BITS = 19  #: of the built-in type that stands in for an unknown number type
+NAMESPACE = re.compile(r"c:@N@(\w+)@")  #: of a USR
 BIT_INT = re.compile(r"(unsigned )?_BitInt\((\d+)\)")
 
 
@@ -125,29 +126,30 @@ ANYWHERE: dict[str, Callable[[list[Argument]], Type]] = {
     "ac_fixed": _fixed,
     "burst_maxi": lambda given: BurstPointerType(_type(given[0])),
 }
-#: The same for names that users give to types of their own: only where our headers declare them.
-IN_HEADERS: dict[str, Callable[[list[Argument]], Type]] = {
-    "half": lambda _: RealType(16, 2),
-    "stream": _stream,
-    "ac_channel": _stream,
-    "istream": _stream,
-    "ostream": _stream,
-    "streams": _streams,
-    "istreams": _streams,
-    "ostreams": _streams,
-    "stream_of_blocks": _stream,
-    "read_lock": lambda given: _type(given[0]),
-    "write_lock": lambda given: _type(given[0]),
-    "vector": _vector,
-    "vec_t": _vector,
-    "array": lambda given: ArrayType(_type(given[0]), _count(given[1])),
-    "reference": lambda _: IntType(1, False, 1),  # to a bit of a bitset
-    "bitset": lambda given: integer(given[0], False),
-    "function": lambda _: CallableType(),
-    "atomic": lambda given: _type(given[0]),
-    "mmap": lambda given: PointerType(_type(given[0])),
-    "mmaps": lambda given: ArrayType(PointerType(_type(given[0])), _count(given[1])),
-    "async_mmap": lambda given: BurstPointerType(_type(given[0])),
+#: The same for names that users give to types of their own: only as our headers declare them, by namespace.
+IN_HEADERS: dict[tuple[str, str], Callable[[list[Argument]], Type]] = {
+    ("", "half"): lambda _: RealType(16, 2),
+    ("", "ac_channel"): _stream,
+    ("hls", "stream"): _stream,
+    ("hls", "stream_of_blocks"): _stream,
+    ("hls", "read_lock"): lambda given: _type(given[0]),
+    ("hls", "write_lock"): lambda given: _type(given[0]),
+    ("hls", "vector"): _vector,
+    ("std", "array"): lambda given: ArrayType(_type(given[0]), _count(given[1])),
+    ("std", "bitset"): lambda given: integer(given[0], False),
+    ("std", "reference"): lambda _: IntType(1, False, 1),  # to a bit of a bitset
+    ("std", "function"): lambda _: CallableType(),
+    ("std", "atomic"): lambda given: _type(given[0]),
+    ("tapa", "stream"): _stream,
+    ("tapa", "istream"): _stream,
+    ("tapa", "ostream"): _stream,
+    ("tapa", "streams"): _streams,
+    ("tapa", "istreams"): _streams,
+    ("tapa", "ostreams"): _streams,
+    ("tapa", "vec_t"): _vector,
+    ("tapa", "mmap"): lambda given: PointerType(_type(given[0])),
+    ("tapa", "mmaps"): lambda given: ArrayType(PointerType(_type(given[0])), _count(given[1])),
+    ("tapa", "async_mmap"): lambda given: BurstPointerType(_type(given[0])),
 }
 
 
@@ -259,9 +261,10 @@ class Types:
         name, key = spelling(declaration), usr(declaration)
         if "(lambda" in name or not name and "(lambda" in text(lib.clang_getTypeSpelling(given)):
             return CallableType()
-        if INVENTED in key:
+        if is_stand_in(key):
             return UnknownType(name)
-        made = ANYWHERE.get(name) or IN_HEADERS.get(name)
+        namespace = NAMESPACE.match(key)
+        made = ANYWHERE.get(name) or IN_HEADERS.get((namespace[1] if namespace else "", name))
         if made:
             ours = location(lib.clang_getCursorLocation(declaration), spelled=False)[0].startswith(self._headers)
             if name in ANYWHERE or ours:

@@ -6,11 +6,11 @@ import re
 from collections.abc import Iterable, Iterator
 from typing import Literal as Word
 
-Kind = Word["namespace", "template", "type", "empty macro", "call macro", "function template", "function", "constant"]
+Kind = Word["namespace", "template", "type", "empty macro", "call macro", "function template", "function", "variable", "constant"]
 
 #: A name used in several ways is the first of these that fits.
 STRONGEST: tuple[Kind, ...] = (
-    *("template", "type", "empty macro", "namespace", "call macro", "function template", "function", "constant"),
+    *("template", "type", "empty macro", "namespace", "call macro", "function template", "function", "variable", "constant"),
 )
 
 BUILT_IN = r"(?:void|bool|char|short|int|long|float|double|signed|unsigned|auto)"
@@ -59,6 +59,7 @@ def kind_of(name: str, before: str, after: str) -> Kind | None:
     >>> kind_of("N", "for (i = 0; i < ", "; i++)"), kind_of("radar", "", "::gate g;"), kind_of("M", "", "<float, 4> m(3);")
     ('constant', 'namespace', 'template')
     """
+    after_directive = re.search(r"(?:^|\n)[ \t]*#[^\n]*\n\s*$", before)
     before, after = before.rstrip(), after.lstrip()
     if re.match(r"<", after):
         return _before_angle(after)
@@ -70,11 +71,15 @@ def kind_of(name: str, before: str, after: str) -> Kind | None:
         return "type"
     if re.search(r"#\s*define$|\.$|->$|#\s*if.*$|\bdefined\s*\(?$", before):
         return None
-    begins = not before or before[-1] in ";{}:" or before.endswith("*/") or bool(re.search(rf"{DECLARING}$", before))
+    begins = bool(not before or after_directive or before[-1] in ";{}:" or re.search(rf"{DECLARING}$", before))
     in_template = bool(TEMPLATE_OPENING.search(before)) and before[-1:] in ("<", ",")
     if in_template and re.match(r"[*&]*\s*[,>]", after):
         return "type" if after[0] in "*&" else _argument(name, before)
-    if begins and re.match(DECLARING, after) and not re.match(r"(?:const|volatile)\b", after):
+    if re.match(rf"(?:(?:const|volatile)\s+)?(?!const|volatile){DECLARING}", after):
+        return "empty macro"
+    if (begins and (not after or after[0] == "}" or re.match(r"[A-Za-z_]\w*\s+[A-Za-z_]", after) and not re.match(r"const\b", after))) or (
+        before[-1:] in ("*", "&") and re.match(r"[A-Za-z_]\w*\s*[,)=;[]", after)
+    ):
         return "empty macro"
     if before.endswith("(") and (cast := re.match(r"(\**)\s*\)\s*(.?)", after)):
         if cast[1] or re.search(r"\bsizeof\s*\($", before) or re.match(r"[\w(]", cast[2]) and _is_cast(before):
@@ -88,7 +93,7 @@ def kind_of(name: str, before: str, after: str) -> Kind | None:
         return _before_parenthesis(after, begins)
     if begins and re.match(r"[A-Za-z_]", after):
         return "type"
-    return "constant"
+    return "variable" if re.match(r"\[|\.\s*[A-Za-z_]|->", after) else "constant"
 
 
 def template_arguments(after: str) -> tuple[str, ...] | None:

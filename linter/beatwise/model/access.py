@@ -59,11 +59,12 @@ class Guard:
     place: Place
     loops: tuple[int, ...] = ()  #: the loops it is tested in, outermost first
     leaves: bool = False  #: it holds because otherwise the loop or function would have been left
+    chooses: bool = False  #: it says which of several destinations it is, and one of them it always is
 
     @property
     def by_data(self) -> bool:
-        """Whether loaded data decides (leaving early apart: that is told of the loop)."""
-        return not self.leaves and any(symbol.kind == "data" for symbol in self.condition.leaves())
+        """Whether loaded data decides (leaving early and choosing apart: those are told of the loop, of the choice)."""
+        return not self.leaves and not self.chooses and any(symbol.kind == "data" for symbol in self.condition.leaves())
 
 
 @dataclass(frozen=True, slots=True)
@@ -100,6 +101,7 @@ class Access:
     volatile: bool = False
     manual: bool = False  #: an explicit burst request
     unresolved: str | None = None
+    taken: str | None = None  #: what had to be taken for granted about it
     process: str | None = None  #: the dataflow process it runs in
     array_bytes: int | None = None  #: size of the argument, when its type or directive says it
     covers: str = ""  #: the field, lane or bit range used, for a part

@@ -150,6 +150,18 @@ class Form:
         return Form({monomial: factor for monomial, factor in self.terms.items() if symbol not in monomial})
 
 
+def redrawn_in(symbol: Symbol) -> set[int]:
+    """The loops of which a new iteration gives the symbol a new value (that of a parameter never changes)."""
+    found = set(symbol.loops)
+    if symbol.loop is not None:
+        found.add(symbol.loop)
+    for other in symbol.depends:
+        found.update(other.loops)
+        if other.loop is not None:
+            found.add(other.loop)
+    return found
+
+
 def _leaves_of(symbol: Symbol) -> frozenset[Symbol]:
     if symbol.kind == "operation":
         found: frozenset[Symbol] = frozenset()

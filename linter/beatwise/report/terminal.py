@@ -187,20 +187,21 @@ def _ports(page: _Page, sheet: Sheet) -> None:
         text = Text("   ").append(_fitted(printable(port.interface), names), style="bold").append("  ")
         text.append_text(_beam(page, port, scale, beam))
         text.append(f"  {rate(port.now_gbps):>6} of {rate(port.could_gbps):<5}  {port.width_bits:>4} bit")
-        others = [argument for argument in port.arguments if argument != port.interface]
-        if page.wide and others:
-            text.append(f"  {printable(', '.join(others))}", style="dim")
+        if page.wide and _named_apart(port):
+            text.append(f"  {printable(', '.join(port.arguments))}", style="dim")
         page.line(text)
-    shared = [port for port in sheet.interfaces if port.arguments not in ((), (port.interface,))]
-    if not page.wide:
-        for port in shared:
-            page.wrapped(
-                Text(f"{printable(port.interface)} carries {printable(', '.join(port.arguments))}", style="dim"), 3
-            )
+    carried = [f"{port.interface} {', '.join(port.arguments)}" for port in sheet.interfaces if _named_apart(port)]
+    if carried and not page.wide:
+        page.wrapped(Text(printable(f"carried: {'; '.join(carried)}"), style="dim"), indent=3)
     if sheet.undeclared:
         names_ = printable(", ".join(sheet.undeclared))
         page.wrapped(Text(f"No directive makes a port for {names_}: a port for each is taken.", style="dim"), indent=3)
     page.gap()
+
+
+def _named_apart(port: PortTraffic) -> bool:
+    """Whether the port's name does not already say what it carries."""
+    return port.arguments not in ((), (port.interface,))
 
 
 def _beam(page: _Page, port: PortTraffic, scale: float, cells: int) -> Text:

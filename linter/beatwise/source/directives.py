@@ -44,6 +44,7 @@ FLAGS = {
 
 PRAGMA = re.compile(r"#\s*pragma\s", re.IGNORECASE)
 HEAD = re.compile(r"\s*hls\s+(\w+)", re.IGNORECASE)
+BLANKS = re.compile(r"\s*")
 SEPARATION = re.compile(r"[\s,]*")
 KEY = re.compile(r"([A-Za-z_]\w*)\s*(=(?!=))?")
 ATOM = re.compile(r'"(?:\\.|[^"\\])*"?|[^\s"()\[\]{}]|[()\[\]{}]')
@@ -96,8 +97,7 @@ def read_script(text: str, file: str) -> tuple[Directive, ...]:
 def _options(text: str, start: int) -> Iterator[tuple[str, str]]:
     index = start
     while index < len(text):
-        separation = SEPARATION.match(text, index)
-        index = separation.end() if separation else index
+        index = _past(SEPARATION, text, index)
         key = KEY.match(text, index)
         if key and key[2]:
             value, index = _value(text, key.end())
@@ -111,24 +111,21 @@ def _options(text: str, start: int) -> Iterator[tuple[str, str]]:
 
 def _value(text: str, start: int) -> tuple[str, int]:
     """The text of a value and where it ends: at the first blank outside brackets and quotes that ends an operand."""
-    depth, index, first = 0, start, True
-    last = ""
-    begin = end = start
-    while index < len(text):
-        if text[index].isspace():
-            index += 1
-            continue
-        atom = ATOM.match(text, index)
-        if not atom:
+    begin = index = end = _past(BLANKS, text, start)
+    depth, last = 0, "="
+    while atom := ATOM.match(text, index):
+        if depth == 0 and _ends(text, end, index, last):
             break
-        if not first and depth == 0 and _ends(text, end, index, last):
-            break
-        if first:
-            begin, first = index, False
         depth += (atom[0] in "([{") - (atom[0] in ")]}")
         last = atom[0][-1]
-        index = end = atom.end()
+        end = atom.end()
+        index = _past(BLANKS, text, end)
     return _unquoted(text[begin:end].rstrip(",")), end
+
+
+def _past(pattern: re.Pattern[str], text: str, start: int) -> int:
+    match = pattern.match(text, start)
+    return match.end() if match else start
 
 
 def _ends(text: str, end: int, following: int, last: str) -> bool:

@@ -44,8 +44,8 @@ def gather(
     ignore: Sequence[str] = (),
     only_kernels: bool = False,
 ) -> Gathered:
-    """The groups in the order of the paths, files given by name first; within a folder in the order of the names, its own
-    files before those of its subfolders.
+    """The groups in the order of the paths, files given by name first; in a folder its own files, then its subfolders,
+    both by name.
 
     A file given by name is analysed as it is. In a folder the kernels are found by reading; functions named in ``tops``
     count as kernels, and files that match a pattern of ``ignore`` (on the name from the folder down) are passed over.

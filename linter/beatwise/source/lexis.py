@@ -26,6 +26,7 @@ QUOTED = {'"': re.compile(STRING), "'": re.compile(CHARACTER)}
 VISIBLE = re.compile(r"[^\n\r]")
 UNPLAIN = re.compile(r"[^\x00-\x7f]")
 CONDITION = re.compile(r"#[ \t]*(if|elif|else|endif)(?:n?def)?\b[ \t]*(0[ \t]*(?=$|\s|/))?")
+SUFFIX = re.compile(r"\w*")
 CHARACTER_PREFIX = re.compile(r"(?:^|\W)(?:u8|[uUL])$")
 
 
@@ -56,12 +57,12 @@ def lexemes(text: str) -> Iterator[Lexeme]:
         elif stop["tag"] is not None:
             close = f'){stop["tag"]}"'
             found = text.find(close, stop.end())
-            index = len(text) if found < 0 else found + len(close)
+            index = len(text) if found < 0 else _end(SUFFIX, text, found + len(close))
             yield Lexeme("string", start, index)
         elif sign == "'" and _separates_digits(text, start):
             index = start + 1
         else:
-            index = _end(QUOTED[sign], text, start)
+            index = _end(SUFFIX, text, _end(QUOTED[sign], text, start))
             yield Lexeme("string", start, index)
 
 

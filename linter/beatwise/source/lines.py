@@ -21,7 +21,6 @@ class Lines:
 
     def __init__(self, file: str, text: str) -> None:
         self.file = file
-        self.length = len(text)
         self._starts = [0, *(match.end() for match in LINE_END.finditer(text))]
         self._wide = [] if text.isascii() else [match.start() for match in WIDE.finditer(text)]
         self._extra = [0, *accumulate(len(text[index].encode("utf-8", "surrogatepass")) - 1 for index in self._wide)]

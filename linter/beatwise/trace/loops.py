@@ -46,6 +46,8 @@ from beatwise.trace.values import (
 )
 
 Cell = tuple[Root, Path]
+TURNS_AT_MOST = 64  #: iterations of a loop that are followed one by one
+TURN_STEPS_AT_MOST = 20_000  #: statements and expressions in all of them
 
 
 @dataclass(slots=True)
@@ -179,7 +181,10 @@ class Looper(Caller):
         provisional = counter(name, loop_number)
         outer_open = self.open
         self.open = (*self.open, loop_number)
-        mark = self.record.mark()
+        mark, steps = self.record.mark(), self.steps
+        self.record.loops[loop_number] = LoopInstance(
+            loop_number, provisional, statement.place, self.frame.function.name, None, why_unknown="it was not followed"
+        )
         entry = state.copy()
         moving = self._enter(entry, changed_in_body | changed_in_step, hints, loop_number)
         count_from = provisional
@@ -220,8 +225,6 @@ class Looper(Caller):
         # what is carried
         solved = self._solve(moving, end, count_from, loop_number, mark)
         values = solved.closed
-        if end is not None:
-            end = self._swapped(moving, end, values, count_from)
         memo = {}
         condition = substitute(condition, values, memo)
         exits = [substitute(conjunction(s.guards[len(base_guards) :]), values, memo) for s in flow.breaks]
@@ -229,6 +232,13 @@ class Looper(Caller):
         if end is None and not exits:
             exits = [ONE]
         trips = self._trips(condition, exits, count_from, statement, trips_early)
+        silent = self.record.mark() == mark
+        fuzzy = any(ANY in path for _, path in changed_in_body)
+        if silent and (solved.left or fuzzy) and self._is_short(trips, self.steps - steps):
+            self.open = outer_open
+            del self.record.loops[loop_number]
+            assert trips.count is not None and trips.count.known is not None
+            return self._turn_by_turn(statement, state, trips.count.known)
         final = count_from
         if trips.count is not None:
             high = bounds(trips.count)[1]
@@ -356,8 +366,27 @@ class Looper(Caller):
         inside.update(n for n in self.record.loops if n > loop_number)
         return solve(carries, count_from, frozenset(inside))
 
-    def _swapped(self, moving: list[Moving], end: State, values: dict[Symbol, Form], count_from: Symbol) -> State:
-        return end
+    def _is_short(self, trips: Trips, steps: int) -> bool:
+        count = trips.count.known if trips.count is not None and not trips.unsolved else None
+        return count is not None and count <= TURNS_AT_MOST and count * steps <= TURN_STEPS_AT_MOST
+
+    def _turn_by_turn(self, statement: Loop, state: State, turns: int) -> Flow:
+        """A short loop that touches no memory, one iteration after the other: its values then have exact forms."""
+        flow = Flow(state)
+        for _ in range(turns):
+            if flow.next is None:
+                break
+            if statement.condition is not None and statement.test_first:
+                self.value(statement.condition, flow.next)
+            part = self.run(statement.body, flow.next)
+            flow.returns += part.returns
+            after = part.next
+            for left in (*part.continues, *part.breaks):
+                after = self.join(after, left, statement.place)
+            if after is not None and statement.step is not None:
+                self.value(statement.step, after)
+            flow.next = after
+        return flow
 
     def _trips(
         self, condition: Form, exits: list[Form], count_from: Symbol, statement: Loop, early: Form | None
@@ -531,9 +560,7 @@ class Looper(Caller):
                 if any(other.kind == "data" for other in symbol.depends):
                     made = data(symbol.name, statement.place, self.open, depends=symbol.depends)
                 else:
-                    made = unknown(
-                        f"{symbol.name} after the loop at line {statement.place.line}", statement.place, self.open, symbol.depends
-                    )
+                    made = unknown("", statement.place, self.open, symbol.depends)
                 swap[symbol] = symbol_form(replace(made, low=symbol.low, high=symbol.high))
         return substitute(form, swap)
 

@@ -181,7 +181,7 @@ class Machine:
             case ChoiceSpot():
                 values = []
                 for condition, arm in spot.arms:
-                    branch = state.under(condition, spot.place, self.open)
+                    branch = state.under(condition, spot.place, self.open, chooses=True)
                     self._choosing = Choice(spot.selector, spot.place, alternatives(spot))
                     values.append((condition, self.load(arm, place, branch)))
                     self._choosing = None
@@ -233,7 +233,7 @@ class Machine:
                 state.write(spot, value)
             case ChoiceSpot():
                 for condition, arm in spot.arms:
-                    branch = state.under(condition, spot.place, self.open)
+                    branch = state.under(condition, spot.place, self.open, chooses=True)
                     self._choosing = Choice(spot.selector, spot.place, alternatives(spot))
                     if isinstance(arm, LocalSpot):
                         old = state.read(arm, place)
@@ -249,10 +249,9 @@ class Machine:
         if self.scouting:
             return
         argument = self.arguments[spot.argument]
-        unresolved = None
-        if not spot.unit_bytes:
-            named = spot.type.name if isinstance(spot.type, UnknownType) else "its type"
-            unresolved = f"the size of {named} is not known"
+        taken = None
+        if isinstance(spot.type, UnknownType):
+            taken = f"the size of {spot.type.name} is not known and taken as {spot.unit_bytes} bytes"
         self.record.accesses.append(
             (
                 Access(
@@ -271,7 +270,7 @@ class Machine:
                     choice=self._choosing,
                     volatile=argument.volatile,
                     manual=manual,
-                    unresolved=unresolved,
+                    taken=taken,
                     process=self.process,
                     array_bytes=argument.array_bytes,
                     covers=spot.covers,
@@ -320,7 +319,7 @@ class Machine:
                 for condition, arm in spot.arms:
                     self._choosing = Choice(spot.selector, spot.place, alternatives(spot))
                     self.stream_operation(
-                        arm, what, place, state.under(condition, spot.place, self.open), blocking=blocking
+                        arm, what, place, state.under(condition, spot.place, self.open, chooses=True), blocking=blocking
                     )
                     self._choosing = None
             case _:

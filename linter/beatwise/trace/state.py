@@ -53,11 +53,11 @@ class State:
         twin.filled, twin.written = dict(self.filled), self.written
         return twin
 
-    def under(self, condition: Form, place: Place, loops: tuple[int, ...]) -> State:
+    def under(self, condition: Form, place: Place, loops: tuple[int, ...], *, chooses: bool = False) -> State:
         """A copy in which ``condition`` is known to hold."""
         twin = self.copy()
         if condition.known is None:
-            twin.guards = (*self.guards, Guard(condition, place, loops))
+            twin.guards = (*self.guards, Guard(condition, place, loops, chooses=chooses))
         return twin
 
     def become(self, other: State) -> None:
@@ -75,7 +75,7 @@ class State:
         exact = cells.get(path)
         if exact is not None:
             return exact
-        if any(isinstance(step, Form) for step in path):
+        if any(isinstance(step, Form) and step.known is None for step in path):
             return self._read_some(spot, cells, path, place)
         parts = {key[len(path) :]: value for key, value in cells.items() if key[: len(path)] == path}
         if parts:
@@ -89,7 +89,7 @@ class State:
             value = filled_element(filled, path[0])
             if value is not None:
                 return Number(value)
-        at = next(i for i, step in enumerate(path) if isinstance(step, Form))
+        at = next(i for i, step in enumerate(path) if isinstance(step, Form) and step.known is None)
         index = path[at]
         assert isinstance(index, Form)
         found: dict[int, Value] = {}

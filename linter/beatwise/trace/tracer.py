@@ -22,7 +22,8 @@ from beatwise.trace.interfaces import interfaces_of, is_memory
 from beatwise.trace.loops import Looper
 from beatwise.trace.machine import STEPS_AT_MOST, Frame, OutOfSteps
 from beatwise.trace.state import State
-from beatwise.trace.values import LocalSpot, MemorySpot, Number, Path, Pointer, Record, Root, Value
+from beatwise.trace.steering import steered
+from beatwise.trace.values import LocalSpot, MemorySpot, Number, Path, Pointer, Record, Root, Value, size_of
 
 DEEPEST = 20_000  #: Python frames: a deep nest of calls and expressions is followed by recursion
 
@@ -117,6 +118,7 @@ def _trace(program: Program, top: Function, given: Mapping[str, int]) -> Trace:
     except RecursionError:
         problems.append(Problem(top.place.file, top.place.line, f"{top.name}: nested too deeply to be followed"))
     accesses, operations = machine.record.finished()
+    accesses = steered(accesses)
     parameters.update(machine.given_used)
     problems += [Problem(place.file, place.line, what) for place, what in dict.fromkeys(machine.notes)]
     return Trace(
@@ -140,9 +142,9 @@ def memory_of(name: str, kind: Type) -> MemorySpot:
     while isinstance(kind, ReferenceType):
         kind = kind.to
     if isinstance(kind, PointerType | BurstPointerType):
-        return MemorySpot(name, number(0), kind.to.bytes, kind.to)
+        return MemorySpot(name, number(0), size_of(kind.to), kind.to)
     if isinstance(kind, ArrayType):
-        return MemorySpot(name, number(0), kind.element.bytes, kind.element)
+        return MemorySpot(name, number(0), size_of(kind.element), kind.element)
     return MemorySpot(name, number(0), kind.bytes, kind)
 
 

@@ -11,11 +11,17 @@ from dataclasses import dataclass, replace
 
 from beatwise.model.form import ZERO, Form, both, negation, number, opaque, select, symbol_form
 from beatwise.model.place import Place
-from beatwise.model.types import ArrayType, Type, VoidType
+from beatwise.model.types import ArrayType, Type, UnknownType, VoidType
 
 Root = tuple[str, int]  #: a variable: its key and the activation of its function
 Path = tuple[str | Form, ...]  #: fields and subscripts, outermost first
 ARMS_AT_MOST = 64
+UNKNOWN_BYTES = 4  #: what an element of unknown type is taken to have; it is told where it is used
+
+
+def size_of(kind: Type) -> int:
+    """The bytes of an element; that of an unknown type is taken for granted."""
+    return kind.bytes or (UNKNOWN_BYTES if isinstance(kind, UnknownType) else 0)
 
 
 @dataclass(frozen=True, slots=True)
@@ -101,7 +107,7 @@ def shifted(spot: Spot, by: Form, pointee: Type) -> Spot:
         case MemorySpot():
             if by.known == 0 and (spot.part_bytes is not None or spot.type == pointee):
                 return spot
-            size = pointee.bytes or spot.unit_bytes
+            size = size_of(pointee) or spot.unit_bytes
             return MemorySpot(spot.argument, spot.offset + by * size, size, pointee)
         case LocalSpot():
             if by.known == 0:
@@ -119,9 +125,9 @@ def recast(spot: Spot, pointee: Type) -> Spot:
     """The spot as a pointer cast to ``pointee`` sees it."""
     match spot:
         case MemorySpot():
-            if isinstance(pointee, VoidType) or not pointee.bytes or pointee == spot.type:
+            if isinstance(pointee, VoidType) or not size_of(pointee) or pointee == spot.type:
                 return spot
-            return MemorySpot(spot.argument, spot.offset, pointee.bytes, pointee)
+            return MemorySpot(spot.argument, spot.offset, size_of(pointee), pointee)
         case ChoiceSpot():
             return replace(spot, arms=tuple((c, recast(arm, pointee)) for c, arm in spot.arms))
         case _:
@@ -133,7 +139,7 @@ def element(spot: Spot, index: Form, kind: Type, count: int | None = None) -> Sp
     match spot:
         case MemorySpot():
             if isinstance(spot.type, ArrayType) and spot.part_bytes is None:
-                return MemorySpot(spot.argument, spot.offset + index * kind.bytes, kind.bytes, kind)
+                return MemorySpot(spot.argument, spot.offset + index * size_of(kind), size_of(kind), kind)
             return replace(spot, type=kind, part_bytes=kind.bytes, covers=f"{spot.covers}[]")
         case LocalSpot():
             return LocalSpot(spot.root, (*spot.path, index), kind)

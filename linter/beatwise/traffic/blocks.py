@@ -14,7 +14,7 @@ from dataclasses import dataclass
 from beatwise.model.access import Access, Guard, LoopInstance
 from beatwise.model.traffic import Block, Walk
 from beatwise.traffic.motion import drawn_in, moving_loop, varies
-from beatwise.traffic.sites import Seat, exclusive
+from beatwise.traffic.sites import Seat, Tests, exclusive, tests_of
 
 
 @dataclass(frozen=True, slots=True)
@@ -24,13 +24,12 @@ class Neighbours:
     accesses: Sequence[Access]
     seats: Sequence[Seat]
     guards: Sequence[tuple[Guard, ...]]  #: those that are left of each access's (`effective_guards`)
+    tests: Sequence[Tests]  #: the conditions of each
     directly: dict[tuple[int, str, str], list[int]]  #: by innermost loop, interface and direction
     anywhere: dict[tuple[int, str, str], list[int]]  #: by any loop around, argument and direction
 
 
-def neighbours(
-    accesses: Sequence[Access], seats: Sequence[Seat], guards: Sequence[tuple[Guard, ...]]
-) -> Neighbours:
+def neighbours(accesses: Sequence[Access], seats: Sequence[Seat], guards: Sequence[tuple[Guard, ...]]) -> Neighbours:
     """The accesses of one kernel, ready to ask who runs beside whom."""
     directly: dict[tuple[int, str, str], list[int]] = defaultdict(list)
     anywhere: dict[tuple[int, str, str], list[int]] = defaultdict(list)
@@ -41,7 +40,7 @@ def neighbours(
             anywhere[loop.number, access.argument, access.direction].append(index)
         if access.loops:
             directly[access.loops[-1].number, access.interface, access.direction].append(index)
-    return Neighbours(accesses, seats, guards, directly, anywhere)
+    return Neighbours(accesses, seats, guards, [tests_of(access) for access in accesses], directly, anywhere)
 
 
 def blocked(index: int, walk: Walk, beside: Neighbours) -> tuple[Block, ...]:
@@ -61,7 +60,7 @@ def blocked(index: int, walk: Walk, beside: Neighbours) -> tuple[Block, ...]:
             found.append("data-dependent-exit")
         if _is_interleaved(index, beside):
             found.append("interleaved")
-        if _is_updated(access, loop, beside):
+        if _is_updated(index, loop, beside):
             found.append("load-and-store")
     if access.volatile:
         found.append("volatile")
@@ -95,10 +94,9 @@ def _is_interleaved(index: int, beside: Neighbours) -> bool:
         return False
     return any(
         beside.seats[other].sweep != seat.sweep
-        and beside.seats[other].element != seat.element
         and _has_turns(beside.accesses[other])
         and not _same_site(access, beside.accesses[other])
-        and exclusive(access, beside.accesses[other]) is None
+        and exclusive(beside.tests[index], beside.tests[other]) is None
         for other in beside.directly[access.loops[-1].number, access.interface, access.direction]
     )
 
@@ -113,9 +111,10 @@ def _same_site(left: Access, right: Access) -> bool:
     return left.choice is not None and left.place == right.place and left.chain == right.chain
 
 
-def _is_updated(access: Access, loop: LoopInstance, beside: Neighbours) -> bool:
+def _is_updated(index: int, loop: LoopInstance, beside: Neighbours) -> bool:
     """Whether the loop that moves the access also goes through the same argument in the other direction."""
+    access = beside.accesses[index]
     opposite = "read" if access.direction == "write" else "write"
     others = beside.anywhere.get((loop.number, access.argument, opposite), ())
-    conditions = (exclusive(access, beside.accesses[other]) for other in others)
+    conditions = (exclusive(beside.tests[index], beside.tests[other]) for other in others)
     return any(condition is None or varies(condition, loop) for condition in conditions)

@@ -81,8 +81,10 @@ def _walks(
             whole = runs.walk(head, given)
             if seat.elements == 1 or whole.pattern == "sequential":
                 run = None if whole.run_elements is None else whole.run_elements * seat.elements
+                shared = guards[index] != access.guards and whole.executions is not None
+                executions = whole.executions / seat.alike if shared else walk.executions
                 stride = access.element_bytes if seat.elements > 1 else whole.stride_bytes
-                walk = replace(whole, stride_bytes=stride, run_elements=run, executions=walk.executions)
+                walk = replace(whole, stride_bytes=stride, run_elements=run, executions=executions)
         walks.append(walk)
     return tuple(walks)
 

@@ -11,7 +11,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass, field
 
 from beatwise.model.access import Access, LoopInstance
-from beatwise.model.form import Form, Symbol
+from beatwise.model.form import Form, Symbol, redrawn_in
 from beatwise.traffic.compiled import Values, compiled
 
 STEPS_AT_MOST = 12_000  #: iterations of innermost loops that are walked through for one access
@@ -27,6 +27,7 @@ class Seen:
     """What the walk saw: bytes between one access and the next, and the runs they make."""
 
     element_bytes: int
+    cut: bool = False  #: each round of the innermost loop is a run of its own (a copy)
     steps: Counter[int] = field(default_factory=Counter)
     inner_steps: Counter[int] = field(default_factory=Counter)  #: within the innermost loop
     executions: int = 0
@@ -44,7 +45,7 @@ class Seen:
             self.steps[step] += 1
             if inner:
                 self.inner_steps[step] += 1
-        if offset == self._next:
+        if offset == self._next and not (self.cut and not inner):
             self.last_run += 1
         else:
             self.runs += 1
@@ -82,11 +83,13 @@ class Seen:
 class Walker:
     """One walk. ``trips_of`` gives the trips of loops whose count no form tells."""
 
-    def __init__(self, access: Access, sizes: Mapping[Symbol, int], trips_of: Mapping[int, int], rows: Mapping[Symbol, int]) -> None:
+    def __init__(
+        self, access: Access, sizes: Mapping[Symbol, int], trips_of: Mapping[int, int], rows: Mapping[Symbol, int]
+    ) -> None:
         self.access, self.trips_of, self.rows = access, trips_of, rows
         self.values: Values = _Drawn(self)
         self.values.update(sizes)
-        self.seen = Seen(access.element_bytes)
+        self.seen = Seen(access.element_bytes, cut=bool(access.loops) and access.loops[-1].kind == "copy")
         self.steps = 0
         self.guards = [g.condition for g in access.guards if not g.leaves or not _by_data(g.condition)]
         self.free = [g for g in self.guards if not _by_data(g)]
@@ -251,9 +254,8 @@ def _drawn_in(access: Access) -> dict[int, set[Symbol]]:
     for form in forms:
         for symbol in form.leaves():
             if symbol.kind in ("data", "unknown"):
-                for loop in numbers:
-                    if loop in symbol.loops or any(loop in other.loops for other in symbol.depends):
-                        found.setdefault(loop, set()).add(symbol)
+                for loop in redrawn_in(symbol).intersection(numbers):
+                    found.setdefault(loop, set()).add(symbol)
     for at, loop in enumerate(numbers):  # an outer iteration draws the inner data anew, too
         for inner in numbers[at + 1 :]:
             found.setdefault(loop, set()).update(found.get(inner, ()))

@@ -11,7 +11,7 @@ from dataclasses import dataclass
 from math import gcd
 
 from beatwise.model.access import Access, LoopInstance
-from beatwise.model.form import Form, Symbol, bounds, number
+from beatwise.model.form import Form, Symbol, bounds, number, redrawn_in
 from beatwise.model.traffic import Basis, Pattern, Walk
 from beatwise.traffic.compiled import compiled
 from beatwise.traffic.replay import Walker
@@ -90,7 +90,9 @@ def _trips(loop: LoopInstance, sizes: Mapping[Symbol, int]) -> Trips:
         low, high = bounds(form)
         if loop.tripcount is not None:
             return Trips(loop.tripcount, form, "tripcount", loop)
-        return Trips(min(ASSUMED_TRIPS, high) if high is not None and high > 0 else ASSUMED_TRIPS, form, "assumed", loop)
+        return Trips(
+            min(ASSUMED_TRIPS, high) if high is not None and high > 0 else ASSUMED_TRIPS, form, "assumed", loop
+        )
     unknown = [symbol for symbol in leaves if symbol.kind == "parameter" and not _is_given(symbol)]
     if unknown and loop.tripcount is not None:
         return Trips(loop.tripcount, form, "tripcount", loop)
@@ -138,14 +140,18 @@ def _lost(access: Access) -> str | None:
 
 def _by_formula(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, int]) -> Walk | None:
     """The walk, when the address is linear in all counters and the nest is a box; None when it is not."""
-    if any(t.loop.until or t.loop.recurrences or t.count < 0 for t in trips):
+    if any(t.loop.until or t.count < 0 for t in trips):
         return None
     if any(any(not _by_data(form) for form in t.loop.exits) for t in trips):
         return None
     counters = {t.loop.counter for t in trips}
     if any(counters & g.condition.leaves() and not _by_data(g.condition) for g in access.guards):
         return None
-    if any(symbol.kind in ("data", "unknown", "carried") for symbol in access.offset.leaves()):
+    numbers = {t.loop.number for t in trips}
+    if any(
+        symbol.kind in ("data", "unknown", "carried") and numbers.intersection(redrawn_in(symbol))
+        for symbol in access.offset.leaves()
+    ):
         return None
     strides: list[Form] = []
     rest = access.offset
@@ -177,6 +183,7 @@ def _boxed(
     step: int | None = None
     run_basis: list[Basis] = []
     run_multiple = access.element_bytes
+    copied = bool(trips) and trips[-1].loop.kind == "copy"
     start_multiple = gcd(START_MULTIPLE, *(abs(f) for f in rest.terms.values()))
     for t, stride in zip(reversed(trips), reversed(strides), strict=True):
         executions *= t.count
@@ -185,7 +192,7 @@ def _boxed(
         value = compiled(stride)(dict(sizes)) if not _drawn(stride) else None
         if pattern == "single":
             pattern, step = _pattern(stride, value, access.element_bytes, t)
-        joins = whole and _joins(stride, value, run_form, run * access.element_bytes, run_basis)
+        joins = whole and not (copied and t is not trips[-1]) and _joins(stride, value, run_form, run * access.element_bytes, run_basis)
         if joins:
             run *= t.count
             run_basis.append(t.basis)
@@ -195,7 +202,9 @@ def _boxed(
             if whole and run == 1:
                 run_basis.append(t.basis)
             whole = False
-            start_multiple = gcd(start_multiple, *(abs(f) for f in stride.terms.values())) if stride.terms else start_multiple
+            start_multiple = (
+                gcd(start_multiple, *(abs(f) for f in stride.terms.values())) if stride.terms else start_multiple
+            )
     basis = _worst(run_basis) if run_basis else _worst([t.basis for t in trips])
     mean: float = float(run)
     if pattern in ("repeated", "descending") or (pattern == "strided"):
@@ -204,10 +213,11 @@ def _boxed(
         mean, basis = min(mean, 1 / (1 - EVEN_CHANCE)) if pattern == "sequential" else 1.0, "data"
     if access.manual:
         pattern = "sequential" if pattern == "single" else pattern
-    copied = trips and trips[-1].loop.kind == "copy" and pattern == "single"
-    if copied:
+    if copied and pattern == "single":
         pattern, step = "sequential", access.element_bytes
-    return Walk(pattern, step, mean, basis, float(executions), None, start_multiple or START_MULTIPLE, run_multiple)
+    return Walk(
+        pattern, step, mean, basis, float(executions), access.taken, start_multiple or START_MULTIPLE, run_multiple
+    )
 
 
 def _pattern(stride: Form, value: int | None, element: int, t: Trips) -> tuple[Pattern, int | None]:
@@ -251,7 +261,12 @@ def _guarded(access: Access, trips: Sequence[Trips]) -> bool:
 
 
 def _redrawn(form: Form) -> set[int]:
-    return {loop for symbol in form.leaves() if symbol.kind == "data" for loop in symbol.loops}
+    """The loops of which a new iteration brings new data into the form."""
+    return {n for symbol in form.leaves() if _holds_data(symbol) for n in redrawn_in(symbol)}
+
+
+def _holds_data(symbol: Symbol) -> bool:
+    return symbol.kind == "data" or any(other.kind == "data" for other in symbol.depends)
 
 
 # ------------------------------------------------------------------------------------------------- by walking
@@ -290,7 +305,7 @@ def _by_walking(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, i
     start = gcd(START_MULTIPLE, *(abs(f) for f in access.offset.terms.values()))
     if any(s.kind == "operation" or s.kind == "carried" for s in access.offset.leaves()):
         start = gcd(start, access.element_bytes)
-    return Walk(pattern, step, mean, basis, executions, None, start, access.element_bytes)
+    return Walk(pattern, step, mean, basis, executions, access.taken, start, access.element_bytes)
 
 
 def _ends_by_itself(loop: LoopInstance) -> bool:
@@ -317,15 +332,13 @@ def _seen_pattern(steps: Mapping[int, int], element: int) -> tuple[Pattern, int 
     if not total:
         return "single", None
     step, times = max(steps.items(), key=lambda item: (item[1], -abs(item[0])))
-    if times * 2 < total or (times * 2 == total and len(steps) > 2):
-        return "irregular", None
     if step == element:
-        return "sequential", element
+        return ("sequential", element) if times * 2 >= total else ("irregular", None)
+    if times * 4 < total * 3:
+        return "irregular", None
     if step == -element:
         return "descending", -element
-    if step == 0:
-        return "repeated", 0
-    return ("strided", step) if times * 4 >= total * 3 else ("irregular", None)
+    return ("repeated", 0) if step == 0 else ("strided", step)
 
 
 def _rows(trips: Sequence[Trips]) -> dict[Symbol, int]:
@@ -351,17 +364,40 @@ def _indirect(access: Access, trips: Sequence[Trips]) -> bool:
 
     The first element of a row whose bounds are both data is no index: the row is walked in order.
     """
-    numbers = [t.loop.number for t in trips]
-    drawn = {s for s in access.offset.leaves() if s.kind == "data"}
+    drawn = _values_in(access.offset, access, set())
+    drawn = {s for s in drawn if _holds_data(s)}
     if not drawn:
         return False
-    bounds_of_rows: set[Symbol] = set()
-    for t in trips:
-        if t.form is not None:
-            step = access.offset.coefficient(t.loop.counter)
-            if step is not None and step.known:
-                bounds_of_rows |= {s for s in t.form.leaves() if s.kind == "data"}
-    return any(set(s.loops).intersection(numbers) for s in drawn - bounds_of_rows)
+    for t in reversed(trips):
+        if t.loop.trips is not None and t.loop.trips.known == 1:
+            continue
+        if any(t.loop.number in redrawn_in(s) for s in drawn):
+            return True
+        if t.loop.counter in access.offset.leaves() or any(s.loop == t.loop.number for s in access.offset.leaves()):
+            return False
+    return False
+
+
+def _values_in(form: Form, access: Access, seen: set[Symbol]) -> set[Symbol]:
+    """The leaves that make up the form's value, those apart that only decide between two values.
+
+    ``out[n++]`` under a condition on data walks in order, although data says how far.
+    """
+    carried = {r.symbol: r for loop in access.loops for r in loop.recurrences}
+    found: set[Symbol] = set()
+    for symbol in form.symbols():
+        if symbol in seen:
+            continue
+        if symbol.kind == "operation":
+            operands = symbol.operands[1:] if symbol.name == "select" else symbol.operands
+            for operand in operands:
+                found |= _values_in(operand, access, seen)
+        elif symbol in carried:
+            seen.add(symbol)
+            found |= _values_in(carried[symbol].next, access, seen) | _values_in(carried[symbol].first, access, seen)
+        else:
+            found.add(symbol)
+    return found
 
 
 # ----------------------------------------------------------------------------------------------------- steered
@@ -372,6 +408,8 @@ def _steered(access: Access, found: Walk) -> Walk:
     assert access.choice is not None
     places = max(2, len(access.choice.alternatives))
     run = places / (places - 1)
+    if found.pattern == "sequential" and _own_counter(access):
+        return Walk("steered", None, found.run_elements, "data", found.executions, None)
     if found.pattern in ("indirect", "irregular", "strided", "descending", "repeated"):
         run = 1.0
     if not access.loops:
@@ -383,3 +421,8 @@ def _steered(access: Access, found: Walk) -> Walk:
     if inner.kind == "copy" or not _redrawn(access.choice.selector).intersection({inner.number}):
         return Walk("steered", None, found.run_elements, found.basis, found.executions, None)
     return Walk("steered", None, run, "data", found.executions, None)
+
+
+def _own_counter(access: Access) -> bool:
+    """Whether the destination has a counter of its own, which moves only when it is chosen."""
+    return any(symbol.kind == "carried" for symbol in access.offset.leaves())

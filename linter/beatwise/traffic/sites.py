@@ -2,8 +2,8 @@
 
 from __future__ import annotations
 
-from collections import defaultdict
-from collections.abc import Hashable, Sequence
+from collections import Counter, defaultdict
+from collections.abc import Hashable, Mapping, Sequence
 from dataclasses import dataclass
 from itertools import pairwise
 
@@ -34,10 +34,10 @@ def seats(accesses: Sequence[Access]) -> tuple[Seat, ...]:
     element. A window ``a[i]``, ``a[i + 1]`` is no sweep: it meets elements again in the next iteration.
     """
     keys = [_key(index, access) for index, access in enumerate(accesses)]
-    alike: dict[Hashable, int] = defaultdict(int)
+    parts = [(key, access.part_bytes, _part(index, access)) for index, (key, access) in enumerate(zip(keys, accesses))]
+    alike = Counter(parts)
     groups: dict[Hashable, list[int]] = defaultdict(list)
     for index, access in enumerate(accesses):
-        alike[keys[index], access.offset.constant, access.part_bytes] += 1
         groups[keys[index][0], _conditions(access.guards)].append(index)
     numbers: dict[Hashable, int] = {}
     found: list[Seat | None] = [None] * len(accesses)
@@ -46,13 +46,12 @@ def seats(accesses: Sequence[Access]) -> tuple[Seat, ...]:
         together = len(slots) > 1 and _one_run(accesses[group[0]], slots)
         head = min(group, key=lambda index: keys[index][1])
         for index in group:
-            access = accesses[index]
             found[index] = Seat(
                 sweep=numbers.setdefault(head if together else keys[index], len(numbers)),
                 element=numbers.setdefault(keys[index], len(numbers)),
                 head=head if together else index,
                 elements=len(slots) if together else 1,
-                alike=alike[keys[index], access.offset.constant, access.part_bytes],
+                alike=alike[parts[index]],
             )
     return tuple(seat for seat in found if seat is not None)
 
@@ -76,24 +75,41 @@ def effective_guards(accesses: Sequence[Access]) -> tuple[tuple[Guard, ...], ...
     return tuple(result)
 
 
-def exclusive(left: Access, right: Access) -> Form | None:
-    """The condition of ``left`` that keeps both from running in one iteration, if there is one."""
-    for guard in left.guards:
-        for other in right.guards:
-            if _opposite(guard.condition, other.condition) or _different(guard.condition, other.condition):
-                return guard.condition
+@dataclass(frozen=True, slots=True)
+class Tests:
+    """The conditions under which an access runs, ready to be held against another's."""
+
+    conditions: Conditions
+    opposites: Mapping[Form, Form]  #: the condition by its negation
+    asked: Mapping[Form, tuple[int, Form]]  #: for ``x == 3``: by x, the number and the condition
+
+
+def tests_of(access: Access) -> Tests:
+    """What must hold for the access to run."""
+    conditions = _conditions(access.guards)
+    asked = ((condition, _number_asked(condition)) for condition in conditions)
+    return Tests(
+        conditions,
+        {negation(condition): condition for condition in conditions},
+        {what[0]: (what[1], condition) for condition, what in asked if what is not None},
+    )
+
+
+def exclusive(left: Tests, right: Tests) -> Form | None:
+    """The condition on the left that keeps both from running in one iteration, if there is one."""
+    for condition in left.conditions & right.opposites.keys():
+        return condition
+    for opposite in left.opposites.keys() & right.conditions:
+        return left.opposites[opposite]
+    for value in left.asked.keys() & right.asked.keys():
+        if left.asked[value][0] != right.asked[value][0]:
+            return left.asked[value][1]
     return None
 
 
 def _opposite(left: Form, right: Form) -> bool:
     """Whether one is true where the other is false."""
     return right == negation(left) or left == negation(right)
-
-
-def _different(left: Form, right: Form) -> bool:
-    """Whether they ask one value to be two numbers."""
-    mine, theirs = _number_asked(left), _number_asked(right)
-    return mine is not None and theirs is not None and mine[0] == theirs[0] and mine[1] != theirs[1]
 
 
 def _number_asked(condition: Form) -> tuple[Form, int] | None:
@@ -126,6 +142,11 @@ def _key(index: int, access: Access) -> tuple[Hashable, float]:
         access.offset - constant,
     )
     return family, constant // size if within else constant / size
+
+
+def _part(index: int, access: Access) -> Hashable:
+    """Which part of the element is used; of lanes nothing but their size is known, so each is taken for another."""
+    return index if access.covers.endswith("[]") else access.covers
 
 
 def _one_run(access: Access, slots: Sequence[float]) -> bool:

@@ -1,8 +1,8 @@
 // What the stand-ins for unknown names are made of: a value that can be built from anything, used in any way, and
 // converted to anything. Everything that is stood in for is declared in namespace _BwInvented.
 //
-// The converting constructors of _BwAny are explicit, so that `known ? any : 1` has one meaning; those of a stand-in
-// type are not, so that it can be passed, returned and initialised like a number.
+// _BwAny is what comes out of a stand-in. Its converting constructors are explicit, so that `known ? any : 1` has one
+// meaning; those of a stand-in type are not, so that it can be passed, returned and initialised like a number.
 #pragma once
 #ifndef _BwAnyMembers
 #define _BwAnyMembers
@@ -13,15 +13,11 @@ template <class _BwT, class = void> struct _BwIsOpen { static constexpr bool val
 template <class _BwT> struct _BwIsOpen<_BwT, typename _BwT::_BwOpen> { static constexpr bool value = true; };
 template <class _BwT, class = void> struct _BwIsAny { static constexpr bool value = false; };
 template <class _BwT> struct _BwIsAny<_BwT, typename _BwT::_BwSwallows> { static constexpr bool value = true; };
-struct _BwAny {
+struct _BwAny;
+struct _BwUsable {
   typedef void _BwOpen, _BwSwallows;
-  _BwAny() = default;
-  _BwAny(const _BwAny &) = default;
-  template <class... _BwA> constexpr explicit _BwAny(_BwA &&...) {}
   operator long long() const;
   template <class _BwT, class = _BwEnable<!_BwIsOpen<_BwT>::value>> operator _BwT() const;
-  _BwAny &operator=(const _BwAny &) = default;
-  template <class _BwT> _BwAny &operator=(const _BwT &);
   template <class... _BwA> _BwAny operator()(_BwA &&...) const;
   template <class _BwT> _BwAny &operator[](const _BwT &) const;
   _BwAny &operator*() const;
@@ -34,6 +30,15 @@ struct _BwAny {
   _BwAny operator~() const;
   _BwAny *begin() const;
   _BwAny *end() const;
+};
+struct _BwAny : _BwUsable {
+  _BwAny() = default;
+  _BwAny(const _BwAny &) = default;
+  template <class... _BwA> constexpr explicit _BwAny(_BwA &&...) {}
+  _BwAny &operator=(const _BwAny &) = default;
+  template <class _BwT> _BwAny &operator=(const _BwT &);
+  _BwAny operator&() const;
+  _BwAny *operator->() const;
   _BwAnyMembers
 };
 #define _BwEither _BwEnable<_BwIsAny<_BwA>::value || _BwIsAny<_BwB>::value>
