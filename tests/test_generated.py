@@ -53,7 +53,7 @@ def wrong(nest: Nest, name: str, document: dict[str, object]) -> list[str]:
     (kernel,) = [kernel for kernel in document["kernels"] if kernel["name"] == name]  # type: ignore[attr-defined]
     loads = [access for access in kernel["accesses"] if access["argument"] == "in"]
     if not nest.walk():
-        return [f"{len(loads)} loads, but none runs"] if loads else []
+        return [f"{len(loads)} loads, but none runs"] if any(load["executions"] for load in loads) else []
     if len(loads) != 1:
         return [f"{len(loads)} loads"]
     found = []

@@ -20,6 +20,7 @@ extern "C" void {name}(const float *gates, float *thinned, int n) {{
 """
 #: 8**10 tokens; no compiler gets through this in the time that the tests give it
 BOMB = "#define A0 x\n" + "".join(f"#define A{i} {f'A{i - 1} ' * 8}\n" for i in range(1, 11)) + "int boom() {{ A10 }}\n"
+BLOWN = ("gave up after 3 s", "needs more than 2048 MB of memory", "the compiler could not read this file")
 HASTY = Settings(time_limit_seconds=3.0)
 
 
@@ -50,7 +51,9 @@ def test_a_macro_bomb_costs_one_line_whatever_the_number_of_jobs(folder: Path, j
     (folder / "aa.cpp").write_text(BOMB + THIN.format(name="thin_bomb"), encoding="utf-8")
     found = survey([folder], replace(HASTY, jobs=jobs))
     assert [sheet.kernel for sheet in found.kernels] == ["thin_a", "thin_b", "thin_c"]
-    assert [(problem.file, problem.what) for problem in found.problems] == [("aa.cpp", "gave up after 3 s")]
+    (problem,) = found.problems
+    assert problem.file == "aa.cpp"
+    assert problem.what in BLOWN
     assert not found.failed
 
 

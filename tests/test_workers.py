@@ -32,6 +32,10 @@ def work(item: int | str) -> int:
         held = []
         while True:
             held.append(bytearray(50_000_000))
+    if item == "gorge":
+        return len(bytearray(250_000_000))
+    if item == "pid":
+        return os.getpid()
     if item == "abort":
         os.abort()
     if item == "raise":
@@ -88,14 +92,15 @@ def test_a_module_in_the_working_directory_is_not_imported(tmp_path: object, mon
     assert list(each(work, [3], limits=TIGHT)) == [Done(9)]
 
 
+def test_a_worker_is_kept_for_the_next_item_until_it_has_held_half_of_its_memory() -> None:
+    first, second, _, third = each(work, ["pid", "pid", "gorge", "pid"], limits=TIGHT, jobs=1)
+    assert first == second != third
+
+
 def test_no_worker_outlives_the_loop_that_is_left_early() -> None:
-    results = each(pid, range(4), limits=TIGHT, jobs=2)
+    results = each(work, ["pid"] * 4, limits=TIGHT, jobs=2)
     first = next(results)
     assert isinstance(first, Done)
     results.close()  # type: ignore[attr-defined]
     with pytest.raises(ProcessLookupError):
         os.kill(first.result, 0)
-
-
-def pid(item: int) -> int:
-    return os.getpid()

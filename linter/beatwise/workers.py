@@ -25,6 +25,7 @@ Item = TypeVar("Item")
 Result = TypeVar("Result")
 
 HEADER = 8  #: bytes of the length before each message
+FIT, TIRED = b"\0", b"\1"  #: sent after an answer: whether the worker had better be replaced
 
 
 @dataclass(frozen=True, slots=True)
@@ -118,8 +119,12 @@ class _Worker:
         try:
             _send(process.stdin, pickle.dumps((function, item)))
             answer = _receive(process.stdout)
+            tired = _exactly(process.stdout, 1) == TIRED
         except (BrokenPipeError, EOFError):
             return Lost(self._obituary(process))
+        if tired:
+            process.kill()
+            self._bury(process)
         found: Done[Result] | Lost = pickle.loads(answer)
         return found
 
@@ -198,6 +203,16 @@ def serve() -> None:
         answer = _answered(task, megabytes)
         signal.setitimer(signal.ITIMER_REAL, 0)
         _send(results, answer)
+        results.write(TIRED if _peak_megabytes() > megabytes / 2 else FIT)
+        results.flush()
+
+
+def _peak_megabytes() -> float:
+    """The most memory that this process ever held; a library that failed may not have given it back."""
+    import resource
+
+    unit = 1 if sys.platform == "darwin" else 1024  # of ru_maxrss: getrusage(2) of each system
+    return resource.getrusage(resource.RUSAGE_SELF).ru_maxrss * unit / 1e6
 
 
 def _answered(task: bytes, megabytes: int) -> bytes:

@@ -101,6 +101,6 @@ def _parameters(facts: Facts, assumed: list[Traffic]) -> list[str]:
 def _evidence(loop: LoopInstance) -> str:
     if loop.why_unknown or loop.trips is None:
         why = f": {loop.why_unknown}" if loop.why_unknown else ""
-        return f"How long {the_loop(loop)} runs is not known{why}."
+        return f"How often {the_loop(loop)} runs is not known{why}."
     hangs = [symbol.name for symbol in loop.trips.leaves() if symbol.kind in ("parameter", "data")]
-    return f"How long {the_loop(loop)} runs hangs on {listed(hangs or [str(loop.trips)])}."
+    return f"How often {the_loop(loop)} runs hangs on {listed(hangs or [str(loop.trips)])}."

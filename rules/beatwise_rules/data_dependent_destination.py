@@ -73,7 +73,7 @@ def find(facts: Facts) -> Iterator[Finding]:
     for site in sites(facts, is_steered):
         for traffic in site:
             access = traffic.access
-            where = access.place.offset if access.choice else -moving_loop(access).number
+            where = access.choice.place.offset if access.choice else -moving_loop(access).number
             chosen.setdefault((access.place.file, where, access.direction), []).append(traffic)
     for group in chosen.values():
         yield _told(facts, sorted(group, key=lambda traffic: (-traffic.loss_gbps, traffic.access.order)))

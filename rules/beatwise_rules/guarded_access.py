@@ -48,7 +48,7 @@ from beatwise.model.traffic import Traffic
 from beatwise_rules.advice import a_buffer, burst_bytes, burst_elements
 from beatwise_rules.evidence import trouble
 from beatwise_rules.sites import blocked_by, data_in, moving_loop, named_data, sites
-from beatwise_rules.wording import PASSIVE, count, lines, listed, quoted, size, the_loop
+from beatwise_rules.wording import PASSIVE, count, lines, listed, quoted, sentence, size, the_loop
 
 CURES = frozenset({"short-run"})
 
@@ -82,10 +82,20 @@ def _told(facts: Facts, site: list[Traffic]) -> Finding:
 
 def _odds(traffic: Traffic) -> str:
     run = traffic.walk.run_elements
+    if _is_packed(traffic):
+        return (
+            "The addresses follow each other, but whether the next one comes is known only when its data has arrived."
+        )
     if traffic.walk.basis == "data" and run is not None and run > 1:
         odds = f"{1 - 1 / run:.2g}"
         return f"If it holds {odds} of the time, {count(run, 'element')} in a row are to be expected: 1/(1 - {odds})."
     return "If it holds with probability p, 1/(1 - p) elements in a row are to be expected: 2 for p = 1/2, 10 for 9/10."
+
+
+def _is_packed(traffic: Traffic) -> bool:
+    """Whether the address moves on only when the access happens, as in ``out[n++]``."""
+    access = traffic.access
+    return traffic.walk.pattern == "sequential" and moving_loop(access).counter not in access.offset.symbols()
 
 
 def _advice(facts: Facts, traffic: Traffic) -> str:
@@ -96,7 +106,7 @@ def _advice(facts: Facts, traffic: Traffic) -> str:
             f"the reads then join into bursts of up to {size(burst_bytes(facts, traffic))}."
         )
     entries = a_buffer(burst_elements(facts, traffic), access.element_bytes)
-    return (
-        f"Write {name} in every iteration and let the condition choose the value; "
-        f"or collect the accepted elements on chip and write {entries} at a time, one full burst."
-    )
+    collect = f"collect the accepted elements on chip and write {entries} at a time, one full burst."
+    if _is_packed(traffic):
+        return sentence(collect)
+    return f"Write {name} in every iteration and let the condition choose the value; or {collect}"

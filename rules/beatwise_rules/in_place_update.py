@@ -68,8 +68,8 @@ def find(facts: Facts) -> Iterator[Finding]:
                 f"Each side moves {size(access.element_bytes)} per request; a burst of this port holds "
                 f"{size(burst_bytes(facts, worst))}.",
             ),
-            instead=f"Work in blocks of {a_buffer(block, access.element_bytes)}: load one on chip in one loop, store it "
-            f"in another, {count(BURSTS_A_BLOCK, 'full burst')} each; or write to an argument other than {name}.",
+            instead=f"Work in blocks of {a_buffer(block, access.element_bytes)}: load one on chip in one loop, "
+            f"store it in the next, {count(BURSTS_A_BLOCK, 'burst')} each; or write to another argument.",
         )
 
 

@@ -80,10 +80,15 @@ def _told(facts: Facts, name: str, uses: list[Invention]) -> Finding:
         interface=None,
         message=f"The {first.what} {quoted(name)} is missing and was stood in for.",
         because=tuple(evidence),
-        instead="Give the folder that holds it with `--include DIR`."
-        if first.what == "header"
-        else f"Give the header that declares it with `--include DIR`, or `--define {name}=VALUE` if it is a macro.",
+        instead=_advice(first),
     )
+
+
+def _advice(invention: Invention) -> str:
+    if invention.what == "header":
+        return "Give the folder that holds it with `--include DIR`."
+    macro = f", or `--define {invention.name}=VALUE` if it is a macro" if invention.what == "constant" else ""
+    return f"Give the header that declares it with `--include DIR`{macro}."
 
 
 def _hangs_on(access: Access, name: str, uses: Iterable[Invention]) -> bool:

@@ -54,7 +54,7 @@ def find(facts: Facts) -> Iterator[Finding]:
     for site in sites(facts, is_narrow):
         worst, access = site[0], site[0].access
         beat_bytes = worst.width_bits // 8
-        name, lanes = quoted(access.argument), elements_a_beat(facts, worst)
+        name = quoted(access.argument)
         yield trouble(
             "narrow-port",
             facts,
@@ -66,7 +66,7 @@ def find(facts: Facts) -> Iterator[Finding]:
                 f"{facts.board.port_bits // 8} bytes a beat.",
                 f"It is not widened by itself: {_why_not(facts, worst)}.",
             ),
-            instead=_advice(name, facts.board.port_bits, lanes, access.manual),
+            instead=_advice(facts, worst),
         )
 
 
@@ -81,12 +81,11 @@ def is_narrow(traffic: Traffic) -> bool:
 
 
 def _why_not(facts: Facts, traffic: Traffic) -> str:
-    walk, port = traffic.walk, port_of(facts, traffic)
+    walk, port, wide = traffic.walk, port_of(facts, traffic), NARROW_BITS // 8
     if traffic.access.manual:
         return "explicit burst requests keep the width of their type"
     if port is not None and port.widen_bits is not None and port.widen_bits < NARROW_BITS:
         return f"the port's own option allows {port.widen_bits} bits"
-    wide = NARROW_BITS // 8
     odd_run, odd_start = walk.run_multiple % wide, walk.start_multiple % wide
     if odd_run and odd_start:
         return f"neither the start nor the length of a run is known to be a multiple of {wide} bytes"
@@ -97,13 +96,15 @@ def _why_not(facts: Facts, traffic: Traffic) -> str:
     return "what blocks its bursts also keeps it narrow" if traffic.blocked else "the board's profile does not allow it"
 
 
-def _advice(name: str, port_bits: int, lanes: int, manual: bool) -> str:
-    wide = (
-        f"Declare {name} as {port_bits}-bit words, {count(lanes, 'element')} a beat, and take the elements out on chip"
-    )
-    if manual:
-        return f"{wide}."
+def _advice(facts: Facts, traffic: Traffic) -> str:
+    walk, wide = traffic.walk, NARROW_BITS // 8
+    bits, lanes, name = facts.board.port_bits, elements_a_beat(facts, traffic), quoted(traffic.access.argument)
+    words = f"Declare {name} as {bits}-bit words, {count(lanes, 'element')} a beat, and take the elements out on chip"
+    if traffic.access.manual or not (walk.run_multiple % wide or walk.start_multiple % wide):
+        return f"{words}."
+    if walk.start_multiple % wide:
+        return f"{words}; or let every run start and end at a multiple of {bits // 8} bytes, by padding its rows."
     return (
-        f"{wide}; or give its loop a length that is visibly a multiple of {lanes} (`n / {lanes} * {lanes}`), "
+        f"{words}; or give its loop a length that is visibly a multiple of {lanes} (`n / {lanes} * {lanes}`), "
         "with the rest in a loop of its own."
     )

@@ -44,7 +44,7 @@ from collections.abc import Iterator
 
 from beatwise.model.finding import Facts, Finding
 from beatwise.model.traffic import Traffic
-from beatwise_rules.advice import SHORT_BEATS, a_buffer, tile_side
+from beatwise_rules.advice import SHORT_BEATS, TILE_BYTES, a_buffer, burst_elements
 from beatwise_rules.evidence import trouble
 from beatwise_rules.sites import is_tiny, moving_loop, sites
 from beatwise_rules.wording import PASSIVE, count, quoted, sentence, size, the_loop
@@ -91,19 +91,16 @@ def _told(facts: Facts, site: list[Traffic]) -> Finding:
             f"{size(run_bytes)} fill {count(beats, 'beat')} of {size(beat_bytes)}; "
             f"{SHORT_BEATS} would take {size(SHORT_BEATS * beat_bytes)}.",
         ),
-        instead=_advice(worst),
+        instead=_advice(facts, worst),
     )
 
 
-def _advice(traffic: Traffic) -> str:
-    access, beat_bytes = traffic.access, traffic.width_bits // 8
-    element = access.element_bytes
-    wanted = max(1, SHORT_BEATS * beat_bytes // element)
-    side = tile_side(element)
-    better = f"Move at least {a_buffer(wanted, element)} in order before the address jumps"
+def _advice(facts: Facts, traffic: Traffic) -> str:
+    element, wanted = traffic.access.element_bytes, burst_elements(facts, traffic)
+    better = f"Move {a_buffer(wanted, element)}, a full burst, or more in order before the address jumps"
     if traffic.walk.pattern == "irregular":
         return f"{better}: bring such blocks on chip as they lie, and follow the computed order there."
-    low = max(1, side * side // wanted)
+    low = max(1, TILE_BYTES // (wanted * element))
     return (
         f"{better}: tiles of {low} x {wanted} elements ({size(low * wanted * element)}) instead of narrower ones, "
         "or whole rows through an on-chip buffer."

@@ -54,9 +54,15 @@ def working_loop(access: Access) -> LoopInstance | None:
 
 
 def data_in(form: Form) -> tuple[Symbol, ...]:
-    """The data that a form hangs on, in the order of the source."""
-    found = [symbol for symbol in form.leaves() if symbol.kind == "data"]
+    """The data that a form is made of, in the order of the source; that which it only hangs on where there is no other."""
+    found = _made_of(form) or {symbol for symbol in form.leaves() if symbol.kind == "data"}
     return tuple(sorted(found, key=lambda symbol: symbol.number))
+
+
+def _made_of(form: Form) -> set[Symbol]:
+    direct = {symbol for symbol in form.symbols() if symbol.kind == "data"}
+    inner = (operand for symbol in form.symbols() if symbol.kind == "operation" for operand in symbol.operands)
+    return direct.union(*map(_made_of, inner))
 
 
 def named_data(symbols: Iterable[Symbol]) -> list[str]:

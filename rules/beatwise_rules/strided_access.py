@@ -45,7 +45,7 @@ from beatwise.model.traffic import Traffic
 from beatwise_rules.advice import burst_bytes, tile_side
 from beatwise_rules.evidence import trouble
 from beatwise_rules.sites import moving_loop, sites
-from beatwise_rules.wording import PASSIVE, count, quoted, size, the_loop
+from beatwise_rules.wording import PASSIVE, count, listed, quoted, size, the_loop
 
 CURES = frozenset({"short-run"})
 NEAR_ELEMENTS = 16  #: steps up to this may be cheaper to read through than to jump over (our own choice)
@@ -71,7 +71,7 @@ def _told(facts: Facts, site: list[Traffic]) -> Finding:
             _step(access, stride, loop),
             f"{_used(facts, access, stride)}; a burst of this port holds {size(burst_bytes(facts, worst))}.",
         ),
-        instead=_advice(access, stride, loop),
+        instead=_advice(facts, access, stride, loop),
     )
 
 
@@ -91,15 +91,18 @@ def _used(facts: Facts, access: Access, stride: int | None) -> str:
     return f"Of every {size(travel)} that the memory moves, {used} are used, {100 * used / travel:.3g} %"
 
 
-def _advice(access: Access, stride: int | None, loop: LoopInstance) -> str:
+def _advice(facts: Facts, access: Access, stride: int | None, loop: LoopInstance) -> str:
     element, name = access.element_bytes, quoted(access.argument)
-    unit = next((outer for outer in access.loops if outer is not loop and _step_of(access, outer) == element), None)
     side = tile_side(element)
     tile = (
         f"copy tiles of {side} x {side} elements ({size(side * side * element)}) through on-chip memory, "
         f"in rows of {size(side * element)}, and walk the tile in any order"
     )
+    unit = next((outer for outer in access.loops if outer is not loop and _step_of(access, outer) == element), None)
     if unit is not None:
+        partners = _in_order_along(facts, loop)
+        if partners:
+            return f"Another order of the loops would break the runs of {listed(partners)}: {tile}."
         return f"Make {the_loop(unit)} the innermost: it moves by one element. Where the order must stay, {tile}."
     if stride is not None and abs(stride) % element == 0 and abs(stride) <= NEAR_ELEMENTS * element:
         if access.direction == "read":
@@ -107,6 +110,17 @@ def _advice(access: Access, stride: int | None, loop: LoopInstance) -> str:
             return f"Read in order and pick every {nth} on chip, or lay {name} out so that what is used lies together."
         return f"Gather results on chip and write in order, or lay {name} out so that what is written lies together."
     return f"Lay {name} out in the order of the loop, or {tile}."
+
+
+def _in_order_along(facts: Facts, loop: LoopInstance) -> list[str]:
+    """The arguments that the same loop walks element by element."""
+    return [
+        traffic.access.argument
+        for traffic in facts.traffic
+        if traffic.walk.pattern == "sequential"
+        and any(other.number == loop.number for other in traffic.access.loops)
+        and _step_of(traffic.access, loop) == traffic.access.element_bytes
+    ]
 
 
 def _step_of(access: Access, loop: LoopInstance) -> int | None:

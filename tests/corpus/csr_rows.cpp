@@ -7,11 +7,11 @@ extern "C" void spmv(int rows, const int *row, const int *col, const float *val,
 #pragma HLS INTERFACE m_axi port=y bundle=g4
     for (int r = 0; r < rows; r++) {
         float sum = 0;
-        int begin = row[r];  //! read row sequential run=64
-        int end = row[r + 1];  //! read row sequential run=64
+        int begin = row[r];  //! read row sequential run=64 tells=interleaved-accesses
+        int end = row[r + 1];  //! read row sequential run=64 tells=interleaved-accesses
         for (int k = begin; k < end; k++) {
-            int c = col[k];  //! read col sequential run=data
-            float v = val[k];  //! read val sequential run=data
+            int c = col[k];  //! read col sequential/indirect run=data
+            float v = val[k];  //! read val sequential/indirect run=data
             sum += v * x[c];  //! read x indirect run=1 tells=indirect-index
         }
         y[r] = sum;  //! write y sequential run=64

@@ -6,6 +6,6 @@ extern "C" void pick_rays(const int *ray, const float *in, float *out) {
 #pragma HLS INTERFACE m_axi port=out bundle=g2
     for (int r = 0; r < 32; r++) {
         int which = ray[r];  //! read ray sequential run=32
-        for (int g = 0; g < 128; g++) out[r * 128 + g] = in[which * 128 + g];  //! read in sequential run=128 //! write out sequential run=4096
+        for (int g = 0; g < 128; g++) out[r * 128 + g] = in[which * 128 + g];  //! read in sequential/indirect run=128 //! write out sequential run=4096
     }
 }

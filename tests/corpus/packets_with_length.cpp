@@ -7,7 +7,7 @@ extern "C" void forward(int count, const int *in, int *out) {
     for (int p = 0; p < count; p++) {
         int length = in[from];  //! read in indirect run=1
         for (int i = 0; i < length; i++)
-            out[to + i] = in[from + 1 + i];  //! read in sequential run=data //! write out sequential run=data
+            out[to + i] = in[from + 1 + i];  //! read in sequential/indirect run=data //! write out sequential/indirect run=data
         from += length + 1;
         to += length;
     }

@@ -132,7 +132,7 @@ def test_streams_and_vectors_are_called_by_name() -> None:
           in.read?(x)
           if !in.empty?() && in.read_nb?(x)
             out[0].write?(x)
-          v[0][n] = v[1][2]""")
+          v[0][<u64>n] = v[1][2]""")
 
 
 def test_standard_arrays_are_arrays() -> None:
@@ -142,7 +142,7 @@ def test_standard_arrays_are_arrays() -> None:
     """
     assert body(text) == lines("""
         let t: i32[4] = {}
-        t[n] = <i32>((<u64>t[1] + 4) + <u64>t[3])
+        t[<u64>n] = <i32>((<u64>t[1] + 4) + <u64>t[3])
         a[0] = t[2]""")
 
 
@@ -191,7 +191,9 @@ def test_members_pointers_and_references_lead_to_their_objects() -> None:
 
 
 def test_structured_bindings_stand_for_the_parts() -> None:
-    assert statements("span s{1, 2}; auto [first, count] = s; a[first] = count;", before="struct span { int at, n; };") == lines("""
+    assert statements(
+        "span s{1, 2}; auto [first, count] = s; a[first] = count;", before="struct span { int at, n; };"
+    ) == lines("""
         let s: span = {1, 2}
         let [first, count]: span = s
         a[[first, count].at] = [first, count].n""")

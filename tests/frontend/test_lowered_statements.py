@@ -89,7 +89,9 @@ def test_a_switch_falls_through_until_it_breaks() -> None:
 
 
 def test_labels_name_loops_and_jumps_are_told() -> None:
-    assert statements("outer: for (int i = 0; i < n; i++) { inner: while (n) { n--; goto done; } } done: a[0] = 1;") == lines("""
+    assert statements(
+        "outer: for (int i = 0; i < n; i++) { inner: while (n) { n--; goto done; } } done: a[0] = 1;"
+    ) == lines("""
         let i: i32 = 0
         outer: loop i < n step i++
           inner: loop <u1>n
@@ -99,7 +101,10 @@ def test_labels_name_loops_and_jumps_are_told() -> None:
 
 
 def test_a_range_for_is_a_counted_loop() -> None:
-    assert statements("int t[3] = {1, 2, 3}; for (int &x : t) x = 0; for (int y : {4, 5}) a[y] = y;") == lines("""
+    assert statements(
+        "int t[3] = {1, 2, 3}; for (int &x : t) x = 0; for (int y : {4, 5}) a[y] = y;",
+        before="#include <initializer_list>",
+    ) == lines("""
         let t: i32[3] = {1, 2, 3}
         let index: i32 = 0
         loop index < 3 step ++index
@@ -116,7 +121,11 @@ def test_static_locals_and_constant_tables_keep_their_values() -> None:
     text = """
         static const int table[2][3] = {{1, 2}, {3}};
         int count;
-        extern "C" void echo(int *a) { static int calls = 5; const int local[2] = {7, 8}; a[calls++] = table[1][0] + local[count]; }
+        extern "C" void echo(int *a) {
+          static int calls = 5;
+          const int local[2] = {7, 8};
+          a[calls++] = table[1][0] + local[count];
+        }
     """
     assert shown(text) == lines("""
         global count: i32
@@ -137,7 +146,7 @@ def test_a_place_is_the_text_it_stands_for() -> None:
     """)
     loop = first_loop(function_named(read, "echo"))
     assert (loop.place.line, loop.place.column, loop.place.end_line) == (3, 11, 4)
-    assert loop.place.offset == len('#define STORE(x) a[x] = 0\nvoid echo(int *a, int n) {\n  /* é */ '.encode())
+    assert loop.place.offset == len("#define STORE(x) a[x] = 0\nvoid echo(int *a, int n) {\n  /* é */ ".encode())
     assert str(loop.body.place) == "echo.cpp:4:5"
 
 

@@ -51,11 +51,14 @@ def facts_of(nest: Nest) -> Facts:
 
 
 def bounds(loop: Loop, loops: tuple[Loop, ...]) -> str:
+    around = {other.name: other for other in loops}
+    if loop.grows_with is not None:
+        outer = around[loop.grows_with]
+        return f"0 <= n_{loop.name} < {loop.trips + outer.first} + {outer.step}n_{outer.name}"
     own = f"0 <= n_{loop.name} < {loop.trips}"
     if loop.chunk_of is None:
         return own
-    around = next(other for other in loops if other.name == loop.chunk_of)
-    return f"{own} and n_{loop.name} < {loop.total} - {around.step}n_{around.name}"
+    return f"{own} and n_{loop.name} < {loop.total} - {around[loop.chunk_of].step}n_{loop.chunk_of}"
 
 
 def element(nest: Nest, prefix: str) -> str:

@@ -11,7 +11,9 @@ from typing import TYPE_CHECKING, Literal
 if TYPE_CHECKING:
     from collections.abc import Iterator, Mapping
 
-Style = Literal["for", "while", "pointer", "flattened"]
+Style = Literal["for", "while", "do", "break", "helper", "pointer", "flattened"]
+CounterType = Literal["int", "unsigned", "unsigned char"]
+Twist = Literal["unsigned char", "unsigned short", "%", "&", "^", "/", "min"]
 ELEMENT_BYTES = 4
 
 
@@ -35,7 +37,8 @@ class Loop:
     """A counter that goes from ``first`` in steps (descending if negative) for ``trips`` iterations.
 
     A loop with ``chunk_of`` runs within another one, which goes through ``total`` elements in steps of this one's
-    ``trips``: its last time around it does only what is left.
+    ``trips``: its last time around it does only what is left. One with ``grows_with`` does as many trips more as the
+    counter of that loop says.
     """
 
     name: str
@@ -44,18 +47,30 @@ class Loop:
     trips: int
     chunk_of: str | None = None
     total: int = 0
+    grows_with: str | None = None
+    type: CounterType = "int"
 
     def values(self, counters: Mapping[str, int]) -> range:
-        trips = self.trips if self.chunk_of is None else min(self.trips, self.total - counters[self.chunk_of])
+        trips = self.trips
+        if self.chunk_of is not None:
+            trips = min(self.trips, self.total - counters[self.chunk_of])
+        elif self.grows_with is not None:
+            trips += counters[self.grows_with]
         return range(self.first, self.first + trips * self.step, self.step)
 
     @property
     def bound(self) -> str:
-        if self.chunk_of is None:
-            end = self.first + self.trips * self.step
-            return f"{self.name} < {end}" if self.step > 0 else f"{self.name} > {end}"
-        left = f"{self.total} - {self.chunk_of}"
-        return f"{self.name} < ({left} < {self.trips} ? {left} : {self.trips})"
+        if self.chunk_of is not None:
+            left = f"{self.total} - {self.chunk_of}"
+            return f"{self.name} < ({left} < {self.trips} ? {left} : {self.trips})"
+        end = self.first + self.trips * self.step
+        if self.grows_with is not None:
+            return f"{self.name} < {end} + {self.step} * {self.grows_with}"
+        return f"{self.name} < {end}" if self.step > 0 else f"{self.name} > {end}"
+
+    @property
+    def start(self) -> str:
+        return f"{self.type} {self.name} = {self.first};"
 
     @property
     def bump(self) -> str:
@@ -78,18 +93,51 @@ class Guard:
 
 
 @dataclass(frozen=True, slots=True)
+class Bend:
+    """What keeps an index from being linear: a narrowing cast, or an operation with ``value``."""
+
+    by: Twist
+    value: int = 0
+
+    def at(self, index: int) -> int:
+        match self.by:
+            case "unsigned char":
+                return index % 256
+            case "unsigned short":
+                return index % 65536
+            case "%":
+                return index % self.value
+            case "&":
+                return index & self.value
+            case "^":
+                return index ^ self.value
+            case "/":
+                return index // self.value
+            case "min":
+                return min(index, self.value)
+
+    def text(self, index: Linear) -> str:
+        if self.by in ("unsigned char", "unsigned short"):
+            return f"({self.by})({index})"
+        if self.by == "min":
+            return f"({index}) < {self.value} ? ({index}) : {self.value}"
+        return f"({index}) {self.by} {self.value}"
+
+
+@dataclass(frozen=True, slots=True)
 class Nest:
-    """Loops, outermost first, around ``sum += in[index]``. ``bits`` is the width that the index is cut to, if any."""
+    """Loops, outermost first, around ``sum += in[index]``."""
 
     loops: tuple[Loop, ...]
     index: Linear
     guard: Guard | None = None
-    bits: Literal[8, 16] | None = None
+    bend: Bend | None = None
     style: Style = "for"
 
     def walk(self) -> tuple[int, ...]:
         """The elements in the order in which they are touched."""
-        return tuple(self._cut(self.index.at(counters)) for counters in self.iterations() if self._runs(counters))
+        straight = (self.index.at(counters) for counters in self.iterations() if self._runs(counters))
+        return tuple(straight) if self.bend is None else tuple(map(self.bend.at, straight))
 
     def iterations(self) -> Iterator[Mapping[str, int]]:
         def within(depth: int, counters: Mapping[str, int]) -> Iterator[Mapping[str, int]]:
@@ -104,65 +152,77 @@ class Nest:
     def _runs(self, counters: Mapping[str, int]) -> bool:
         return self.guard is None or self.guard.holds(counters)
 
-    def _cut(self, element: int) -> int:
-        return element if self.bits is None else element % 2**self.bits
-
     @property
     def extent(self) -> int:
         """Elements that the argument must have."""
         return max(self.walk(), default=0) + 1
 
     def text(self, name: str) -> str:
-        """A kernel ``name(const int *in, int *out)``; the access is on the line that ends in ``// here``."""
-        body = {"flattened": self._flattened, "pointer": self._walking_pointer}.get(self.style, self._nested)()
+        """A kernel ``name(const int *in, int *out)``."""
+        body = {"flattened": self._flattened, "pointer": self._walking_pointer}.get(self.style, self._nested)
+        if self.style == "helper":
+            load = f"load_of_{name}(in, {self._subscript})"
+            before = [f"static int load_of_{name}(const int *from, int at) {{", "    return from[at];", "}"]
+        else:
+            load, before = f"in[{self._subscript}]", []
         return "\n".join(
             [
+                *before,
                 f"void {name}(const int *in, int *out) {{",
                 "#pragma HLS INTERFACE m_axi port=in bundle=from",
                 "#pragma HLS INTERFACE m_axi port=out bundle=to",
                 "    int sum = 0;",
-                *(f"    {line}" for line in body),
+                *(f"    {line}" for line in body(load)),
                 "    out[0] = sum;",
                 "}",
                 "",
             ]
         )
 
-    def _load(self, at: str) -> str:
-        guard = f"if ({self.guard}) " if self.guard else ""
-        return f"{guard}sum += {at};  // here"
+    @property
+    def _subscript(self) -> str:
+        return str(self.index) if self.bend is None else self.bend.text(self.index)
 
-    def _nested(self) -> list[str]:
-        cut = {None: "", 8: "(unsigned char)", 16: "(unsigned short)"}[self.bits]
-        lines = [self._load(f"in[{cut}({self.index})]")]
+    def _add(self, load: str) -> str:
+        guard = f"if ({self.guard}) " if self.guard else ""
+        return f"{guard}sum += {load};"
+
+    def _nested(self, load: str) -> list[str]:
+        lines = [self._add(load)]
         for loop in reversed(self.loops):
             inner = [f"    {line}" for line in lines]
-            if self.style == "while":
-                opening = [f"int {loop.name} = {loop.first};", f"while ({loop.bound}) {{"]
-                lines = [*opening, *inner, f"    {loop.bump};", "}"]
-            else:
-                lines = [f"for (int {loop.name} = {loop.first}; {loop.bound}; {loop.bump}) {{", *inner, "}"]
+            bump = f"    {loop.bump};"
+            match self.style:
+                case "while":
+                    lines = [loop.start, f"while ({loop.bound}) {{", *inner, bump, "}"]
+                case "do":
+                    lines = [loop.start, "do {", *inner, bump, f"}} while ({loop.bound});"]
+                case "break":
+                    leave = f"    if (!({loop.bound})) break;"
+                    lines = [f"for ({loop.start};) {{", leave, *inner, bump, "}"]
+                case _:
+                    lines = [f"for ({loop.start} {loop.bound}; {loop.bump}) {{", *inner, "}"]
         return lines
 
-    def _walking_pointer(self) -> list[str]:
+    def _walking_pointer(self, _: str) -> list[str]:
         """A pointer for each loop, which starts where that of the loop around it is, and is bumped in its own loop."""
         factors = dict(self.index.factors)
-        lines = [self._load(f"*p{len(self.loops)}")]
+        lines = [self._add(f"*p{len(self.loops)}")]
         for depth in range(len(self.loops), 0, -1):
             loop = self.loops[depth - 1]
             bump = f"p{depth} += {factors[loop.name] * loop.step};"
             start = f"const int *p{depth} = p{depth - 1} + {factors[loop.name] * loop.first};"
             inner = [f"    {line}" for line in [*lines, bump]]
-            lines = [start, f"for (int {loop.name} = {loop.first}; {loop.bound}; {loop.bump}) {{", *inner, "}"]
+            lines = [start, f"for ({loop.start} {loop.bound}; {loop.bump}) {{", *inner, "}"]
         return [f"const int *p0 = in + {self.index.constant};", *lines]
 
-    def _flattened(self) -> list[str]:
+    def _flattened(self, load: str) -> list[str]:
         """Two loops as one, whose counters are wrapped by hand."""
         outer, inner = self.loops
         return [
             f"int {outer.name} = {outer.first}, {inner.name} = {inner.first};",
             f"for (int k = 0; k < {outer.trips * inner.trips}; k++) {{",
-            f"    {self._load(f'in[{self.index}]')}",
+            f"    {self._add(load)}",
             f"    {inner.bump};",
             f"    if ({inner.name} == {inner.first + inner.trips * inner.step}) {{",
             f"        {inner.name} = {inner.first};",

@@ -11,17 +11,17 @@ if TYPE_CHECKING:
 
 #: what a rule says about a pattern must be borne out by a pattern that the kernel's comments state
 NEEDS: Mapping[str, Callable[[Expectation], bool]] = {
-    "strided-access": lambda one: one.pattern == "strided",
-    "descending-access": lambda one: one.pattern == "descending",
-    "repeated-address": lambda one: one.pattern == "repeated",
-    "indirect-index": lambda one: one.pattern == "indirect",
-    "data-dependent-destination": lambda one: one.pattern == "steered",
+    "strided-access": lambda one: "strided" in one.patterns,
+    "descending-access": lambda one: "descending" in one.patterns,
+    "repeated-address": lambda one: "repeated" in one.patterns,
+    "indirect-index": lambda one: "indirect" in one.patterns,
+    "data-dependent-destination": lambda one: "steered" in one.patterns,
     "guarded-access": lambda one: one.guarded,
     "early-exit": lambda one: "early-exit" in one.tells,
     "volatile-access": lambda one: "volatile-access" in one.tells,
     "partial-record": lambda one: "partial-record" in one.tells,
-    "interleaved-accesses": lambda one: "interleaved-accesses" in one.tells or one.pattern != "sequential",
-    "unresolved-access": lambda one: one.pattern == "unresolved",
+    "interleaved-accesses": lambda one: "interleaved-accesses" in one.tells or "sequential" not in one.patterns,
+    "unresolved-access": lambda one: "unresolved" in one.patterns,
     "invented-name": lambda _: False,
 }
 
@@ -68,12 +68,12 @@ def says(entry: Mapping[str, Any], one: Expectation) -> bool:
     """Whether an access in the answer is what the expectation states."""
     run = entry["run_elements"]
     facts = (
-        entry["pattern"] == one.pattern,
+        entry["pattern"] in one.patterns,
         one.run is None or (run is not None and agrees(run, one.run)),
         one.stride_bytes in (None, entry["stride_bytes"]),
         one.element_bytes in (None, entry["element_bytes"]),
         one.basis in (None, entry["basis"]),
-        one.pattern == "steered" or entry["guarded"] == one.guarded,
+        "steered" in one.patterns or one.joined or entry["guarded"] == one.guarded,
         all(BLOCKED_BY[rule] in entry["blocked"] for rule in one.tells if rule in BLOCKED_BY),
     )
     return all(facts)
@@ -84,7 +84,7 @@ def wrong_findings(truth: Truth, findings: list[Mapping[str, Any]]) -> list[str]
     for one in truth.expectations:
         for rule in one.tells:
             about = [finding for finding in findings if finding["rule"] == rule]
-            if one.pattern != "steered":
+            if "steered" not in one.patterns:
                 about = [finding for finding in about if finding["argument"] in (None, one.argument)]
             if not about:
                 found.append(f"{rule} is not told of {one.argument}, line {one.line}")

@@ -15,6 +15,7 @@ On the line of an access stands what is true of it, one ``//!`` per kind of acce
 
     sum += a[i * pitch];  //! read a strided stride=256 tells=strided-access
 
+Two patterns, as in ``sequential/indirect``, are both true: runs whose starts come from data.
 ``run=`` is in elements; ``run=data`` says that only the data of the day decide it, ``run=unknown`` that something
 not given to the analysed program does. It may be left out for patterns
 whose run is 1 and for ``steered``, ``indirect``, ``irregular`` and ``unresolved``. ``joined`` measures all sites of the
@@ -38,17 +39,19 @@ PATTERNS = frozenset(
     {"sequential", "descending", "strided", "repeated", "indirect", "steered", "irregular", "single", "unresolved"}
 )
 RUN_IS_ONE = frozenset({"descending", "strided", "repeated", "single"})
+SEEN = RUN_IS_ONE | {"sequential"}  #: addresses alone tell these
 TOLERANCE = 0.10  #: of a run, relative
 
 
 @dataclass(frozen=True, slots=True)
 class Expectation:
-    """What is true of the accesses of one line to one argument in one direction. ``run`` None: not stated."""
+    """What is true of the accesses of one line to one argument in one direction. Any of ``patterns`` is true of them.
+    ``run`` None: not stated."""
 
     line: int
     argument: str
     direction: str
-    pattern: str
+    patterns: tuple[str, ...]
     run: float | None = None
     stride_bytes: int | None = None
     element_bytes: int | None = None
@@ -125,8 +128,9 @@ def fill_of(text: str) -> tuple[str, int, int]:
 
 
 def expectations_of(line: int, text: str) -> list[Expectation]:
-    direction, names, pattern, *facts = text.split()
-    if pattern not in PATTERNS or direction not in ("read", "write"):
+    direction, names, stated, *facts = text.split()
+    patterns = tuple(stated.split("/"))
+    if not PATTERNS.issuperset(patterns) or direction not in ("read", "write"):
         raise ValueError(f"line {line}: {text}")
     values = dict(fact.split("=", 1) for fact in facts if "=" in fact and not fact.startswith("tells="))
     flags = {fact for fact in facts if "=" not in fact}
@@ -134,8 +138,8 @@ def expectations_of(line: int, text: str) -> list[Expectation]:
     if unknown:
         raise ValueError(f"line {line}: {' '.join(sorted(unknown))}")
     tells = tuple(fact.removeprefix("tells=") for fact in facts if fact.startswith("tells="))
-    run = values.get("run", "1" if pattern in RUN_IS_ONE else None)
-    if run is None and pattern == "sequential":
+    run = values.get("run", "1" if RUN_IS_ONE.issuperset(patterns) else None)
+    if run is None and "sequential" in patterns:
         raise ValueError(f"line {line}: a sequential access needs a run")
     run = None if run in ("data", "unknown") else run
     stride, element = values.get("stride"), values.get("element")
@@ -144,7 +148,7 @@ def expectations_of(line: int, text: str) -> list[Expectation]:
             line,
             name,
             direction,
-            pattern,
+            patterns,
             float(run) if run is not None else None,
             int(stride) if stride else None,
             int(element) if element else None,
@@ -179,8 +183,8 @@ def objections(truth: Truth, observed: Sequence[Observed]) -> list[str]:
 def describes(expectation: Expectation, site: Observed, joined: Sequence[Observed]) -> bool:
     pieces = join(joined) if joined else site.pieces
     pattern = pattern_of(pieces, site.copies)
-    run = 1.0 if expectation.pattern == "repeated" else run_of(pieces, site.copies)
-    if expectation.pattern in ("sequential", *RUN_IS_ONE) and pattern != expectation.pattern:
+    run = 1.0 if "repeated" in expectation.patterns else run_of(pieces, site.copies)
+    if SEEN.issuperset(expectation.patterns) and pattern not in expectation.patterns:
         return False
     if expectation.element_bytes not in (None, site.element_bytes):
         return False

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from itertools import count
+from typing import Any
 
 from beatwise.model.access import Access, Choice, Direction, Guard, Interface, LoopInstance, Trace
 from beatwise.model.board import Board
@@ -45,13 +46,13 @@ def at(line: int, column: int = 9, file: str = "sweep.cpp") -> Place:
     return Place(file, line, column, line, column + 4, line * 100 + column)
 
 
-def loop(name: str, line: int, trips: int | str | None = 1024, **more: object) -> LoopInstance:
+def loop(name: str, line: int, trips: int | str | None = 1024, **more: Any) -> LoopInstance:
     """A loop over ``name``; ``trips`` by number, by the name of a kernel argument, or not known."""
     number_of_loop = next(_numbers)
     form = (
         number(trips) if isinstance(trips, int) else None if trips is None else symbol_form(parameter(trips, 0, None))
     )
-    return LoopInstance(number_of_loop, counter(name, number_of_loop), at(line), "kernel", form, **more)  # type: ignore[arg-type]
+    return LoopInstance(number_of_loop, counter(name, number_of_loop), at(line), "kernel", form, **more)
 
 
 def over(*steps: tuple[LoopInstance, int], start: int = 0) -> Form:
@@ -86,7 +87,7 @@ class Kernel:
     def __post_init__(self) -> None:
         self.traffic: list[Traffic] = []
         self.inventions: list[Invention] = []
-        self.options: dict[str, dict[str, int]] = {}
+        self.options: dict[str, dict[str, Any]] = {}
 
     def access(
         self,
@@ -109,11 +110,11 @@ class Kernel:
         now: float = 0.25,
         could: float = 13.27,
         limit: Limit = "requests",
-        limits: Mapping[Limit, float] | None = None,
+        limits: Mapping[str, float] | None = None,
         multiple: int = 64,
         interface: str | None = None,
         column: int = 9,
-        **more: object,
+        **more: Any,
     ) -> Kernel:
         """Adds an access."""
         part_bytes = element if part is None else part
@@ -121,7 +122,7 @@ class Kernel:
         access = Access(
             place=at(line, column), chain=(), function="kernel", argument=argument, interface=interface or argument,
             direction=direction, element_bytes=element, part_bytes=part_bytes, offset=address, loops=tuple(loops),
-            **{"guards": (), "order": len(self.traffic), **more},  # type: ignore[arg-type]
+            **{"guards": (), "order": len(self.traffic), **more},
         )  # fmt: skip
         walk = Walk(pattern, stride, run, basis, executions, start_multiple=multiple, run_multiple=multiple)
         self.traffic.append(
@@ -134,25 +135,25 @@ class Kernel:
                 now_gbps=now,
                 could_gbps=could,
                 limit=limit,
-                limits=dict(limits or {limit: now}),
+                limits=limits or {limit: now},
                 bytes_moved=None if executions is None else executions * part_bytes,
             )
         )
         return self
 
-    def clean(self, argument: str, line: int, loops: Sequence[LoopInstance], **more: object) -> Kernel:
+    def clean(self, argument: str, line: int, loops: Sequence[LoopInstance], **more: Any) -> Kernel:
         """Adds an access that gets all it can."""
         well = {"width": 512, "beats": 16, "now": 13.27, "limit": "channel", "run": 65536}
-        return self.access(argument, line, loops, **{**well, **more})  # type: ignore[arg-type]
+        return self.access(argument, line, loops, **{**well, **more})
 
-    def port(self, name: str, **options: int) -> Kernel:
+    def port(self, name: str, **options: Any) -> Kernel:
         """Sets options of an interface."""
         self.options[name] = options
         return self
 
-    def missing(self, name: str, line: int, what: str = "constant") -> Kernel:
+    def missing(self, name: str, line: int, what: Any = "constant") -> Kernel:
         """Adds a name that was stood in for."""
-        self.inventions.append(Invention(name, what, at(line)))  # type: ignore[arg-type]
+        self.inventions.append(Invention(name, what, at(line)))
         return self
 
     def facts(self, given: Mapping[str, int] | None = None, board: Board = BOARD) -> Facts:
@@ -163,7 +164,7 @@ class Kernel:
             if traffic.access.argument not in names:
                 names.append(traffic.access.argument)
         ports = tuple(
-            Interface(name, tuple(names), at(2 + row, 1), True, {}, **self.options.get(name, {}))  # type: ignore[arg-type]
+            Interface(name, tuple(names), at(2 + row, 1), True, {}, **self.options.get(name, {}))
             for row, (name, names) in enumerate(arguments.items())
         )
         trace = Trace(

@@ -2,9 +2,14 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from dataclasses import replace
+from functools import partial
+from typing import Any, get_args
 
 import pytest
+from hypothesis import given
+from hypothesis import strategies as st
 
 from beatwise.model.finding import Finding
 from beatwise.model.traffic import Block, Pattern
@@ -18,8 +23,8 @@ def told(kernel: Kernel) -> list[tuple[str, tuple[str, ...]]]:
     return [(finding.rule, finding.then) for finding in ask(kernel.facts())]
 
 
-def one(kernel: Kernel, **settings: object) -> Finding:
-    (finding,) = ask(kernel.facts(), **settings)  # type: ignore[arg-type]
+def one(kernel: Kernel, **settings: Any) -> Finding:
+    (finding,) = ask(kernel.facts(), **settings)
     return finding
 
 
@@ -31,12 +36,13 @@ def test_a_clean_kernel_is_silent() -> None:
 
 
 def test_a_steered_store_is_not_also_told_as_short_guarded_and_narrow() -> None:
-    kernel = Kernel()
+    kernel, guards = Kernel(), (guard("dbz", 13, I),)
+    blocks: list[Block] = ["destination-by-data", "data-dependent-guard"]
+    add: Callable[..., Kernel] = partial(
+        kernel.access, pattern="steered", run=2, basis="data", multiple=4, blocked=blocks
+    )
     for name in ("wet", "dry"):
-        kernel.access(
-            name, 14, [I], direction="write", pattern="steered", run=2, basis="data", multiple=4, guards=(guard("dbz", 13, I),),
-            blocked=["destination-by-data", "data-dependent-guard"], choice=choice("dbz", 13, ["wet", "dry"], I),
-        )  # fmt: skip
+        add(name, 14, [I], direction="write", guards=guards, choice=choice("dbz", 13, ["wet", "dry"], I))
     assert told(kernel) == [("data-dependent-destination", ())]
 
 
@@ -65,15 +71,34 @@ def test_causes_stand_in_order(pattern: Pattern, blocked: list[Block], first: st
     assert told(kernel) == [(first, then)]
 
 
-def test_rules_are_listed_by_cause() -> None:
-    names = rule_names()
-    order = ["unresolved-access", "data-dependent-destination", "indirect-index", "guarded-access", "early-exit",
-             "repeated-address", "strided-access", "in-place-update", "interleaved-accesses", "short-run", "narrow-port"]  # fmt: skip
-    assert [name for name in names if name in order] == order
-    assert all(rule.cures < set(names[names.index(rule.name) + 1 :]) | {""} for rule in RULES)
+BY_CAUSE = (
+    "unresolved-access",
+    "data-dependent-destination",
+    "indirect-index",
+    "guarded-access",
+    "early-exit",
+    "volatile-access",
+    "repeated-address",
+    "descending-access",
+    "strided-access",
+    "in-place-update",
+    "interleaved-accesses",
+    "short-run",
+    "partial-record",
+    "narrow-port",
+)
 
 
-# ------------------------------------------------------------------------------------------------------ told in one place
+def test_rules_are_listed_by_cause_then_those_of_the_kernel() -> None:
+    assert rule_names() == (*BY_CAUSE, "shared-port", "assumed-size", "invented-name")
+
+
+def test_a_cure_settles_only_what_stands_later() -> None:
+    for position, rule in enumerate(RULES):
+        assert rule.cures <= set(rule_names()[position + 1 :])
+
+
+# --------------------------------------------------------------------------------------------------- told in one place
 
 
 def test_the_load_of_an_in_place_pair_is_covered_by_the_finding_at_the_store() -> None:
@@ -91,7 +116,7 @@ def test_the_partner_of_an_interleaved_access_is_covered_by_the_finding_at_the_f
 def test_a_load_and_a_store_at_one_place_are_one_finding() -> None:
     kernel = Kernel()
     for direction in ("read", "write"):
-        kernel.access("power", 12, [I, loop("g", 11)], over((I, 4)), direction=direction, pattern="repeated", run=1)  # type: ignore[arg-type]
+        kernel.access("power", 12, [I, loop("g", 11)], over((I, 4)), direction=direction, pattern="repeated", run=1)
     assert len(told(kernel)) == 1
 
 
@@ -129,8 +154,9 @@ def test_a_shared_port_is_a_note_where_taking_turns_is_told_already() -> None:
 
 def strided(now: float, could: float = 10.0, executions: float | None = 65536) -> Kernel:
     kernel = Kernel().clean("rest", 20, [I], executions=None if executions is None else 1e6)
-    return kernel.access("x", 12, [I], over((I, 8)), pattern="strided", stride=8, run=1, now=now, could=could,
-                         executions=executions)  # fmt: skip
+    rates = {"now": now, "could": could, "executions": executions}
+    add: Callable[..., Kernel] = partial(kernel.access, pattern="strided", stride=8, run=1)
+    return add("x", 12, [I], over((I, 8)), **rates)
 
 
 @pytest.mark.parametrize(
@@ -179,13 +205,19 @@ def last_line(kernel: Kernel) -> str:
 def test_the_rate_of_single_beat_reads_is_spelt_out() -> None:
     wait_ns = 253 + 1.2 * 1000 / 300
     assert last_line(strided(16 * 4 / wait_ns, 13.27)) == (
-        "1 beat of 4 bytes per request, 16 outstanding over 257 ns: 0.25 GB/s; long full-width bursts would get 13.3 GB/s."
+        "1 beat of 4 bytes per request, 16 outstanding over 257 ns: 0.25 GB/s; "
+        "long full-width bursts would get 13.3 GB/s."
     )
 
 
 def test_the_outstanding_requests_of_the_port_count() -> None:
-    kernel = strided(64 * 4 / 257, 13.27).port("x", read_outstanding=64)
-    assert last_line(kernel).startswith("1 beat of 4 bytes per request, 64 outstanding over 257 ns: 1.00 GB/s")
+    kernel = strided(4 * 4 / 257, 13.27).port("x", read_outstanding=4)
+    assert last_line(kernel).startswith("1 beat of 4 bytes per request, 4 outstanding over 257 ns: 0.062 GB/s")
+
+
+def test_the_rate_of_requests_binds_when_many_are_outstanding() -> None:
+    kernel = strided(4 / (4 * 1000 / 300), 13.27).port("x", read_outstanding=64)
+    assert last_line(kernel).startswith("1 beat of 4 bytes per request, one request in 4 cycles at 300 MHz: 0.30 GB/s")
 
 
 def test_the_gap_between_bursts_of_writes_is_spelt_out() -> None:
@@ -216,3 +248,65 @@ def test_the_seconds_saved_follow_from_known_sizes_only() -> None:
     assumed = [replace(traffic, walk=replace(traffic.walk, basis="assumed")) for traffic in facts.traffic]
     strided_one = next(f for f in ask(replace(facts, traffic=tuple(assumed))) if f.rule == "strided-access")
     assert strided_one.seconds_saved is None
+
+
+# ------------------------------------------------------------------------------------------------------- whatever comes
+
+PATTERNS: tuple[Pattern, ...] = get_args(Pattern)
+BLOCKS: tuple[Block, ...] = get_args(Block)
+
+
+@st.composite
+def kernels(draw: st.DrawFn) -> Kernel:
+    """Kernels of a few accesses about which anything may have been measured."""
+    kernel, shared = Kernel(), loop("i", 10)
+    for _ in range(draw(st.integers(1, 5))):
+        name, line = draw(st.sampled_from("abc")), draw(st.integers(12, 15))
+        loops = draw(st.sampled_from([[], [shared], [shared, loop("j", 11, draw(st.sampled_from([None, 8, "n"])))]]))
+        element, could = draw(st.sampled_from([1, 2, 4, 12, 64])), draw(st.floats(0.01, 13.27))
+        kernel.access(
+            name,
+            line,
+            loops,
+            loaded("x", 11, *loops) * 4 if draw(st.booleans()) else over(*((each, element) for each in loops)),
+            direction=draw(st.sampled_from(["read", "write"])),
+            pattern=draw(st.sampled_from(PATTERNS)),
+            stride=draw(st.sampled_from([None, 0, element, -element, 3 * element + 1])),
+            run=draw(st.sampled_from([None, 1, 4 / 3, 8, 1000])),
+            basis=draw(st.sampled_from(["constant", "assumed", "data"])),
+            executions=draw(st.sampled_from([None, 0, 1, 500, 1e6])),
+            element=element,
+            part=draw(st.integers(1, element)),
+            width=draw(st.sampled_from([8, 32, 128, 512])),
+            beats=draw(st.sampled_from([1, 16])),
+            blocked=draw(st.lists(st.sampled_from(BLOCKS), unique=True)),
+            now=could * draw(st.floats(0, 1)),
+            could=could,
+            limit=draw(st.sampled_from(["requests", "gaps", "width", "port", "channel", "order"])),
+            interface=draw(st.sampled_from([None, "gmem"])),
+            process=draw(st.sampled_from([None, "load", "store"])),
+            choice=draw(st.sampled_from([None, choice("x", 11, ["a", "b"], *loops)])),
+        )
+    return kernel
+
+
+@given(kernels())
+def test_whatever_was_measured_a_site_has_one_finding_at_most(kernel: Kernel) -> None:
+    findings = [finding for finding in ask(kernel.facts()) if finding.rule in BY_CAUSE]
+    sites = [(finding.place, finding.argument) for finding in findings]
+    assert len(sites) == len(set(sites))
+    for finding in findings:
+        assert all(rule_names().index(rule) > rule_names().index(finding.rule) for rule in finding.then)
+        assert finding.message.endswith(".")
+        assert all(line.endswith(".") for line in (*finding.because, finding.instead))
+
+
+@given(kernels())
+def test_no_argument_that_is_walked_out_of_order_goes_without_a_finding(kernel: Kernel) -> None:
+    facts = kernel.facts()
+    spoken = {finding.argument for finding in ask(facts)} | {
+        name for finding in ask(facts) if finding.argument is None for name in ("a", "b", "c")
+    }
+    for traffic in facts.traffic:
+        told_of = traffic.walk.pattern in ("indirect", "strided", "repeated", "descending") and traffic.access.loops
+        assert not told_of or traffic.access.argument in spoken

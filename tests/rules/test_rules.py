@@ -3,15 +3,19 @@
 from __future__ import annotations
 
 from collections.abc import Callable
+from typing import Any
 
 import pytest
 
+from beatwise.model.access import Direction
 from beatwise.model.finding import Finding
+from beatwise.model.form import carried, data, symbol_form
 from beatwise_rules import RULES, ask
 from rules.builders import Kernel, at, choice, guard, loaded, loop, over
 
 FIND = {rule.name: rule.find for rule in RULES}
 I = loop("i", 10, 65536)  # noqa: E741
+DIRECTIONS: tuple[Direction, ...] = ("read", "write")
 RAY, GATE = loop("ray", 10, 360), loop("gate", 11, 1024)
 
 
@@ -43,11 +47,11 @@ def test_an_access_that_runs_once_is_left_in_peace(rule: str) -> None:
 # ---------------------------------------------------------------------------------------------------- where it goes
 
 
-def sectors(direction: str = "write") -> Kernel:
+def sectors(direction: Direction = "write") -> Kernel:
     kernel, names = Kernel(), ["north", "east", "south", "west"]
     for name in names:
         kernel.access(name, 14, [I], direction=direction, pattern="steered", run=4 / 3, basis="data",
-                      blocked=["destination-by-data"], choice=choice("azimuth", 13, names, I))  # type: ignore[arg-type] # fmt: skip
+                      blocked=["destination-by-data"], choice=choice("azimuth", 13, names, I))  # fmt: skip
     return kernel
 
 
@@ -91,6 +95,13 @@ def test_an_index_that_is_loaded_names_what_it_was_loaded_from() -> None:
     )
 
 
+def test_an_index_names_what_it_is_made_of_not_what_that_hangs_on() -> None:
+    first = data("first", at(11), (I.number,))
+    member = data("member", at(12), (I.number,), depends=frozenset((first,)))
+    kernel = Kernel().access("echo", 14, [I], symbol_form(member) * 4, pattern="indirect", stride=None, run=1)
+    assert "taken from `member`, so" in one("indirect-index", kernel).message
+
+
 def test_a_table_of_unknown_size_is_not_simply_copied() -> None:
     kernel = Kernel().access("clutter", 14, [I], loaded("cell", 13, I) * 4, pattern="indirect", stride=None, run=1)
     assert one("indirect-index", kernel).instead.startswith("If `clutter` has no more than 16,384 elements (64 KiB)")
@@ -103,8 +114,8 @@ def test_a_table_that_is_known_to_be_large_is_binned() -> None:
 
 def test_a_histogram_is_one_finding_for_its_load_and_its_store() -> None:
     kernel, bin_ = Kernel(), loaded("level", 13, I, high=255) * 4
-    for direction in ("read", "write"):
-        kernel.access("bins", 14, [I], bin_, direction=direction, pattern="indirect", run=1, blocked=["load-and-store"])  # type: ignore[arg-type]
+    for direction in DIRECTIONS:
+        kernel.access("bins", 14, [I], bin_, direction=direction, pattern="indirect", run=1, blocked=["load-and-store"])
     finding = one("indirect-index", kernel)
     assert "is read and written at an index taken from `level`" in finding.message
     assert "Collect the results in an on-chip copy of `bins`, 256 elements (1 KiB)" in finding.instead
@@ -132,6 +143,16 @@ def test_a_column_walk_is_told_which_loop_to_put_innermost() -> None:
     advice = one("strided-access", kernel).instead
     assert advice.startswith("Make the loop over `gate` (line 11) the innermost")
     assert "tiles of 64 x 64 elements (16 KiB)" in advice
+
+
+def test_a_transpose_is_told_to_go_through_a_tile_since_another_order_breaks_the_other_side() -> None:
+    kernel = Kernel().clean("by_ray", 12, [RAY, GATE], offset=over((RAY, 4096), (GATE, 4)))
+    kernel.access("by_gate", 13, [RAY, GATE], over((RAY, 4), (GATE, 1440)), direction="write", pattern="strided",
+                  stride=1440, run=1)  # fmt: skip
+    advice = one("strided-access", kernel).instead
+    assert advice.startswith(
+        "Another order of the loops would break the runs of `by_ray`: copy tiles of 64 x 64 elements"
+    )
 
 
 def test_a_short_step_is_read_through() -> None:
@@ -231,6 +252,15 @@ def test_a_guarded_store_names_the_condition_and_the_odds() -> None:
     assert "256 elements (1 KiB) at a time, one full burst" in finding.instead
 
 
+def test_a_packed_store_is_told_to_collect_not_to_write_always() -> None:
+    packed = symbol_form(carried("kept", I.number)) * 4
+    kernel = Kernel().access("out", 14, [I], packed, direction="write", run=500, basis="data", guards=(guard("dbz", 13, I),),
+                             blocked=["data-dependent-guard"])  # fmt: skip
+    finding = one("guarded-access", kernel)
+    assert finding.because[1].startswith("The addresses follow each other")
+    assert finding.instead.startswith("Collect the accepted elements on chip and write 256 elements (1 KiB) at a time")
+
+
 def test_a_guard_that_does_not_block_is_left_in_peace() -> None:
     assert found("guarded-access", Kernel().clean("echo", 14, [I], guards=(guard("power", 9),))) == []
 
@@ -268,9 +298,9 @@ def test_accesses_that_take_turns_are_told_once_with_all_their_lines() -> None:
 
 def test_reads_and_writes_do_not_take_turns_with_each_other() -> None:
     kernel = Kernel()
-    for line, direction in ((12, "read"), (13, "read"), (14, "write"), (15, "write")):
-        kernel.access("a", line, [I], direction=direction, blocked=["interleaved"])  # type: ignore[arg-type]
-    assert [finding.place.line for finding in found("interleaved-accesses", kernel)] == [12, 14]
+    for line, direction in enumerate((*DIRECTIONS, *DIRECTIONS), 12):
+        kernel.access("a", line, [I], direction=direction, blocked=["interleaved"])
+    assert [finding.place.line for finding in found("interleaved-accesses", kernel)] == [12, 13]
 
 
 def test_a_volatile_pointer_is_told() -> None:
@@ -281,8 +311,8 @@ def test_a_volatile_pointer_is_told() -> None:
 # --------------------------------------------------------------------------------------------------------- the port
 
 
-def narrow(**more: object) -> Kernel:
-    return Kernel().access("gates", 12, [I], **{"now": 1.2, "limit": "width", "multiple": 4, "beats": 16, **more})  # type: ignore[arg-type]
+def narrow(**more: Any) -> Kernel:
+    return Kernel().access("gates", 12, [I], **{"now": 1.2, "limit": "width", "multiple": 4, "beats": 16, **more})
 
 
 def test_a_narrow_port_is_told_with_its_rate_and_what_keeps_it_narrow() -> None:
@@ -293,7 +323,7 @@ def test_a_narrow_port_is_told_with_its_rate_and_what_keeps_it_narrow() -> None:
 
 
 @pytest.mark.parametrize("clean", [{"element": 16}, {"width": 512}, {"width": 128}, {"pattern": "strided"}])
-def test_a_wide_or_widened_port_is_left_in_peace(clean: dict[str, object]) -> None:
+def test_a_wide_or_widened_port_is_left_in_peace(clean: dict[str, Any]) -> None:
     assert found("narrow-port", narrow(**clean)) == []
 
 
@@ -363,7 +393,7 @@ def test_sizes_that_were_assumed_are_told_once_with_what_would_settle_them() -> 
     kernel = Kernel().clean("a", 12, [rays, gates], basis="assumed").clean("b", 13, [rays, gates], basis="assumed")
     finding = one("assumed-size", kernel)
     assert finding.message == "`rays` and `gates` are not known: 1024 is taken, and the accesses on 2 lines hang on it."
-    assert finding.because[0] == "How long the loop over `ray` (line 10) runs hangs on `rays`."
+    assert finding.because[0] == "How often the loop over `ray` (line 10) runs hangs on `rays`."
     assert finding.instead == "Say what is usual: `--given rays=...` `--given gates=...`."
     assert (finding.level, finding.place.line) == ("note", 1)
 
@@ -371,7 +401,7 @@ def test_sizes_that_were_assumed_are_told_once_with_what_would_settle_them() -> 
 def test_a_loop_that_data_ends_is_named_among_the_assumed() -> None:
     until = loop("i", 10, None, why_unknown="it ends by data")
     finding = one("assumed-size", Kernel().clean("a", 12, [until], basis="assumed"))
-    assert finding.because == ("How long the loop over `i` (line 10) runs is not known: it ends by data.",)
+    assert finding.because == ("How often the loop over `i` (line 10) runs is not known: it ends by data.",)
     assert finding.instead == "Write a trip-count directive into these loops."
 
 

@@ -172,6 +172,13 @@ def test_a_window_meets_elements_again() -> None:
     assert blocked(*(read("a", at(i) * 4 + 4 * k, i) for k in range(3))) == [("interleaved",)] * 3
 
 
+def test_the_bounds_of_an_inner_loop_meet_again() -> None:
+    """for r: for (k = row[r]; k < row[r+1]; k++) ..   reads each bound twice."""
+    r, k = loop("r", 64), loop("k", 8)
+    bounds = (read("row", at(r) * 4, r), read("row", at(r) * 4 + 4, r))
+    assert blocked(*bounds, read("val", at(k) * 4, r, k)) == [("interleaved",), ("interleaved",), ()]
+
+
 def test_neighbours_that_fill_the_stride_are_one_run() -> None:
     """a[3i], a[3i+1], a[3i+2], in any order"""
     i = loop("i", 64)

@@ -123,7 +123,7 @@ def _free_operator(op: str, arguments: tuple[Expression, ...], of: Type, place: 
     first = arguments[0].type
     if isinstance(first, StreamType) and op in ("<<", ">>"):
         return Call(None, "read" if op == ">>" else "write", arguments[0], arguments[1:], of, place)
-    if numbers.is_number(first) or len(arguments) == 2 and numbers.is_number(arguments[1].type):
+    if all(numbers.is_number(one.type) for one in arguments):
         return numbers.operator(op, arguments, of, place)
     return Call(None, f"operator{op}", arguments[0], arguments[1:], of, place)
 
@@ -175,9 +175,9 @@ def _method(
             match name, arguments:
                 case "at", (index,):
                     return Index(receiver, index, of, place)
-                case ("data" | "begin" | "cbegin"), ():
+                case (("data" | "begin" | "cbegin"), ()):
                     return receiver
-                case ("size" | "max_size"), () if count is not None:
+                case (("size" | "max_size"), ()) if count is not None:
                     return Literal(count, of, place)
                 case "front", ():
                     return Index(receiver, Literal(0, SIZE, place), of, place)

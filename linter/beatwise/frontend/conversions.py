@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from beatwise.model.kernel import Bits, Cast, Expression, Items, Literal, Opaque
+from beatwise.model.kernel import Assign, Bits, Cast, Expression, Items, Literal, Opaque
 from beatwise.model.place import Place
 from beatwise.model.types import (
     ArrayType,
@@ -32,16 +32,18 @@ def converted(value: Expression, to: Type, place: Place) -> Expression:
         case Literal(value=int() | float() as number), RealType():
             return Literal(float(number), to, value.place)
         case Literal(value=None), _:
-            return Literal(None, to, value.place)
+            return Literal(None, to, value.place, value.name)
         case Literal(), PointerType() if not isinstance(of, ArrayType):
             return Literal(value.value, to, value.place)
-        case (Items() | Opaque()), _ if isinstance(of, VoidType | UnknownType):
+        case ((Items() | Opaque()), _) if isinstance(of, VoidType | UnknownType):
             return value
     if isinstance(of, ArrayType) and isinstance(to, PointerType) and same(of.element, to.to):
         return value
     if isinstance(of, ArrayType | PointerType) and isinstance(to, ArrayType):
         return value
     if isinstance(value, Items) and isinstance(to, RecordType) or isinstance(value, Bits) and _holds(to, of):
+        return value
+    if isinstance(value, Assign) and isinstance(value.target, Bits):
         return value
     if isinstance(of, CallableType) or isinstance(of, StreamType) and isinstance(to, StreamType):
         return value

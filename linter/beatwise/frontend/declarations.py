@@ -7,7 +7,7 @@ from typing import Literal as Word
 from beatwise.frontend import kinds
 from beatwise.frontend.initials import braced
 from beatwise.frontend.libclang import Cursor, children, library
-from beatwise.frontend.lowering import Lowering, operands
+from beatwise.frontend.lowering import EXTERN, Lowering, operands
 from beatwise.model.kernel import (
     Declare,
     Expression,
@@ -27,10 +27,12 @@ IGNORED = frozenset({20, 33, 34, 35, 36, 601, *kinds.RECORDS, kinds.ENUM, kinds.
 
 def declared(given: Lowering, cursor: Cursor) -> list[Statement]:
     """The statements of one declarator: none for types and the like."""
+    if cursor.kind == kinds.VARIABLE and library().clang_Cursor_getStorageClass(cursor) == EXTERN:
+        return []
     if cursor.kind == kinds.VARIABLE:
         made = variable(given, cursor)
-        if made.constant and isinstance(made.initial, Literal) and isinstance(made.initial.value, int):
-            given.scope.constants[made.name] = made.initial.value
+        if made.constant and isinstance(made.type, IntType) and isinstance(known := given.folded(cursor), int):
+            given.scope.constants[made.name] = known
         lost = _lost_value(given, cursor, made)
         return [Declare(made, made.place), lost] if lost else [Declare(made, made.place)]
     if cursor.kind in IGNORED or cursor.kind in kinds.REFERENCES:

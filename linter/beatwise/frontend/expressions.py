@@ -8,24 +8,22 @@ from beatwise.frontend.conversions import converted
 from beatwise.frontend.initials import braced
 from beatwise.frontend.lambdas import closure
 from beatwise.frontend.libclang import Cursor, evaluated, library, spelling
-from beatwise.frontend.objects import dereferenced, named, this_object
 from beatwise.frontend.lowering import Lower, Lowering, operands
+from beatwise.frontend.objects import dereferenced, named, this_object
 from beatwise.model.kernel import (
     Assign,
     Binary,
     Expression,
-    FunctionName,
     Index,
     Literal,
     Member,
-    Name,
     Opaque,
     Select,
     Step,
     This,
     Unary,
 )
-from beatwise.model.types import ArrayType, CallableType, IntType, PointerType, RecordType, Type, VoidType
+from beatwise.model.types import ArrayType, CallableType, IntType, PointerType
 
 
 def folded(given: Lowering, cursor: Cursor) -> Expression:
@@ -111,6 +109,8 @@ def _unary(given: Lowering, cursor: Cursor) -> Expression:
     if isinstance(operand.type, CallableType) and op in ("&", "*"):
         return operand
     if op == "&" and isinstance(operand, Unary) and operand.op == "*":
+        return operand.operand
+    if op == "*" and isinstance(operand, Unary) and operand.op == "&":
         return operand.operand
     if op is None:
         return Opaque("an operator not known here", (operand,), of, place)

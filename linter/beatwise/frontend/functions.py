@@ -15,7 +15,7 @@ from beatwise.model.types import RecordType, Type
 
 
 def function(given: Lowering, key: str, definition: Cursor, script: tuple[Directive, ...]) -> Function:
-    """A function with its body. ``script`` are the directives that an external script gives to functions of its name."""
+    """A function with its body. ``script`` are the directives that an external script has for its name."""
     lib = library()
     name = given.name(definition)
     record = _record(given, definition)
@@ -80,9 +80,7 @@ def _template_values(given: Lowering, definition: Cursor) -> dict[str, int]:
         template = lib.clang_getSpecializedCursorTemplate(one)
         if template.kind in (kinds.FUNCTION_TEMPLATE, kinds.CLASS_TEMPLATE, 32):
             names = [
-                child
-                for child in children(template)
-                if child.kind in (kinds.TYPE_PARAMETER, kinds.VALUE_PARAMETER, 29)
+                child for child in children(template) if child.kind in (kinds.TYPE_PARAMETER, kinds.VALUE_PARAMETER, 29)
             ]
             for index, parameter in enumerate(names):
                 if parameter.kind == kinds.VALUE_PARAMETER and index < lib.clang_Cursor_getNumTemplateArguments(one):

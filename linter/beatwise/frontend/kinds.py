@@ -90,6 +90,7 @@ CONTINUE: Final = 212
 BREAK: Final = 213
 RETURN: Final = 214
 CATCH: Final = 223
+ASSEMBLY: Final = 215
 TRY: Final = 224
 RANGE_FOR: Final = 225
 EMPTY: Final = 230

@@ -52,7 +52,9 @@ def _captures(given: Lowering, cursor: Cursor, fresh: set[int]) -> tuple[tuple[s
     introducer = INTRODUCER.match(written) if written else None
     items = [item.strip() for item in introducer[1].split(",")] if introducer else ["&"]
     by_reference = not items or "=" not in items
-    explicit = {item.lstrip("& ").split("=")[0].strip(): item.startswith("&") for item in items if len(item) > 1}
+    explicit = {
+        item.lstrip("& ").split("=")[0].strip(): item.startswith("&") for item in items if item not in ("", "&", "=")
+    }
     inner: set[int] = set()
     used: dict[str, bool] = {}
     below = children(cursor)

@@ -199,6 +199,7 @@ def _note(child: Cursor, _parent: Cursor, _data: int | None) -> int:
 
 _visit = Visitor(_note)
 
+
 def children(cursor: Cursor) -> list[Cursor]:
     """The cursors directly below one, in the order of the source."""
     library().clang_visitChildren(cursor, _visit, None)

@@ -10,7 +10,8 @@ from beatwise.frontend.places import GivenFile
 from beatwise.model.kernel import Lost
 
 NOISE = re.compile(
-    rb"//[^\n]*|/\*.*?\*/|^[ \t]*#(?:[^\n\\]|\\\r?\n|\\.)*|\[\[.*?\]\]|\b(?:case|default)\b[^:;]*:", re.DOTALL | re.MULTILINE
+    rb"//[^\n]*|/\*.*?\*/|^[ \t]*#(?:[^\n\\]|\\\r?\n|\\.)*|\[\[.*?\]\]|\b(?:case|default)\b[^:;]*:",
+    re.DOTALL | re.MULTILINE,
 )
 MACRO_USE = re.compile(rb"\b([A-Za-z_]\w*)\s*(\((?:[^()]|\([^()]*\))*\))?")
 WORD = re.compile(rb"\w")

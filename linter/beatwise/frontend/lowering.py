@@ -25,6 +25,8 @@ from beatwise.model.kernel import Directive, Expression, FunctionName, Opaque, S
 from beatwise.model.place import Place
 from beatwise.model.types import Type
 
+EXTERN = 2  #: CX_StorageClass
+
 
 @dataclass(slots=True)
 class Scope:
@@ -177,6 +179,8 @@ class Lowering:
         if known is None:
             if declaration.kind == kinds.VARIABLE and self.is_global(declaration):
                 known = usr(declaration)
+                if lib.clang_Cursor_getStorageClass(declaration) == EXTERN and "@F@" in known:  # told within a function
+                    known = f"c:@{self.name(declaration)}"
                 if lib.clang_getCursorLinkage(declaration) != 4:  # not external: each unit has its own
                     known = f"{known}@{self.number}" if self.number else known
                 canonical = lib.clang_getCanonicalCursor(declaration)
@@ -193,7 +197,10 @@ class Lowering:
         return f"{name}#of{self._fresh}.{self.number}"
 
     def is_global(self, declaration: Cursor) -> bool:
-        parent = library().clang_getCursorSemanticParent(declaration)
+        lib = library()
+        if lib.clang_Cursor_getStorageClass(declaration) == EXTERN:
+            return True
+        parent = lib.clang_getCursorSemanticParent(declaration)
         return parent.kind not in kinds.FUNCTIONS and parent.kind != kinds.FUNCTION_TEMPLATE
 
     def function_key(self, declaration: Cursor) -> str:

@@ -35,5 +35,3 @@ def nodes(root: object) -> Iterator[object]:
                 inner = getattr(one, field.name)
                 if isinstance(inner, tuple) or is_dataclass(inner):
                     work.append(inner)
-
-

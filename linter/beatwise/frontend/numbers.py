@@ -67,12 +67,12 @@ def method(
             return bits(base, high, low, place)
         case "range", ():
             return bits(base, Literal(width - 1, INT, place), Literal(0, INT, place), place)
-        case ("bit" | "get_bit" | "test"), (index,):
+        case (("bit" | "get_bit" | "test"), (index,)):
             return bits(base, index, index, place)
-        case ("set" | "set_bit" | "set_bit_v"), (index, value):
+        case (("set" | "set_bit" | "set_bit_v"), (index, value)):
             one = bits(base, index, index, place)
             return Assign("", one, value, one.type, place)
-        case ("set" | "clear"), (index,) if isinstance(base.type, IntType):
+        case (("set" | "clear"), (index,)) if isinstance(base.type, IntType):
             one = bits(base, index, index, place)
             return Assign("", one, Literal(int(name == "set"), one.type, place), one.type, place)
         case "set", (value,):
@@ -87,7 +87,7 @@ def method(
             top = Binary("+", low, Literal(size - 1, INT, place), INT, place)
             one = bits(base, top, low, place)
             return Assign("", one, value, one.type, place)
-        case ("length" | "width"), ():
+        case (("length" | "width"), ()):
             return Literal(width, of, place)
         case "get", ():
             return base

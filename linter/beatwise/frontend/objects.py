@@ -19,7 +19,7 @@ def named(given: Lowering, cursor: Cursor, declaration: Cursor) -> Expression:
         value = None
         if not (given.inventions and given.is_invented(declaration)):
             value = int(library().clang_getEnumConstantDeclValue(declaration))
-        return Literal(value, given.type(cursor), place)
+        return Literal(value, given.type(cursor), place, given.name(declaration))
     if kind in kinds.FUNCTIONS:
         callee = given.callee(declaration)
         return FunctionName(callee.key or callee.name, CallableType(), place)
@@ -35,7 +35,7 @@ def _variable(given: Lowering, cursor: Cursor, declaration: Cursor) -> Expressio
     of = given.types.of_variable(declaration, exact)
     place = given.place(cursor)
     if given.inventions and declaration.kind == kinds.VARIABLE and is_stand_in(usr(declaration)):
-        return Literal(None, of, place)
+        return Literal(None, of, place, name)
     if declaration.kind == kinds.VARIABLE and given.types.is_constant(lib.clang_getCursorType(declaration)):
         value = given.folded(declaration) if not isinstance(of, ArrayType | PointerType | RecordType) else None
         if isinstance(value, int | float):
@@ -56,5 +56,3 @@ def this_object(given: Lowering, cursor: Cursor) -> Expression:
     record: Type = given.scope.record or VoidType()
     place = given.place(cursor)
     return Unary("*", This(PointerType(record), place), record, place)
-
-

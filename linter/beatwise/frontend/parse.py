@@ -56,7 +56,7 @@ def parse(
     defines: Sequence[str] = (),
     prelude: str = "",
     headers: Mapping[str, str] | None = None,
-    standard: str = "c++17",
+    standard: str = "gnu++17",
 ) -> TranslationUnit:
     """The translation unit of the file at a virtual path. ``files`` are all that it may include, by virtual path;
     ``headers`` more of them, and ``prelude`` is read before the file."""
@@ -82,8 +82,8 @@ def _folders(files: Mapping[str, bytes]) -> list[str]:
 
 
 def _detours(files: Mapping[str, bytes]) -> dict[str, bytes]:
-    """For every include spelled through ``.`` or ``..``, a one-line file at the spelled path that leads to the real one:
-    the compiler compares paths letter by letter."""
+    """For every include spelled through ``.`` or ``..``, a one-line file at the spelled path that leads to the
+    real one: the compiler compares paths letter by letter."""
     found: dict[str, bytes] = {}
     for path, text in files.items():
         for raw in INCLUDE.findall(text):

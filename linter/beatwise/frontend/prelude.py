@@ -22,6 +22,7 @@ class Entry:
     methods that the source defines outside the class."""
 
     kind: EntryKind
+    scopes: set[Scope] = field(default_factory=set)  #: where the name is seen; a name means one thing in all of them
     parameters: tuple[Parameter, ...] = ()
     declared: dict[str, None] = field(default_factory=dict)
     members: dict[str, MemberKind] = field(default_factory=dict)
@@ -35,12 +36,12 @@ class Draft:
     includes: list[str] = field(default_factory=list)
     namespaces: set[Scope] = field(default_factory=set)
     macros: dict[str, str] = field(default_factory=dict)  #: name with its parameters -> replacement
-    names: dict[tuple[Scope, str], Entry] = field(default_factory=dict)
+    names: dict[str, Entry] = field(default_factory=dict)
     of_any: dict[str, MemberKind] = field(default_factory=dict)  #: members of values whose type is not even named
 
-    def add(self, scope: Scope, name: str, entry: Entry) -> None:
+    def add(self, name: str, entry: Entry) -> None:
         entry.value = FIRST_VALUE + VALUE_STEP * len(self.names)
-        self.names[scope, name] = entry
+        self.names[name] = entry
 
     def render(self) -> str:
         """The prelude as C++."""
@@ -50,9 +51,9 @@ class Draft:
             lines += [f"#define _BwAnyMembers {members}", "#include <_bw/invented.h>"]
         lines += [f"#define {name} {text}".rstrip() for name, text in self.macros.items()]
         lines += [_within(scope, "") for scope in sorted(self.namespaces)]
-        for (scope, name), entry in self.names.items():
-            lines.append(_within((INVENTED, *scope), " ".join(_declaration(name, entry))))
-            lines.append(_within(scope, f"using {'::'.join((INVENTED, *scope, name))};"))
+        for name, entry in self.names.items():
+            lines.append(_within((INVENTED,), " ".join(_declaration(name, entry))))
+            lines += [_within(scope, f"using {INVENTED}::{name};") for scope in sorted(entry.scopes)]
         return "".join(f"{line}\n" for line in lines)
 
 

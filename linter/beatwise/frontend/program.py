@@ -5,7 +5,7 @@ from __future__ import annotations
 import re
 import sys
 import threading
-from collections.abc import Callable, Mapping, Sequence
+from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import replace
 
 from beatwise.frontend import kinds
@@ -17,14 +17,15 @@ from beatwise.frontend.libclang import Cursor, TranslationUnit, children, librar
 from beatwise.frontend.lowering import Lowering
 from beatwise.frontend.mentions import mentions
 from beatwise.frontend.parse import virtual_path
-from beatwise.frontend.repair import repaired
 from beatwise.frontend.places import GivenFile
+from beatwise.frontend.repair import repaired
+from beatwise.frontend.statements import pragma, statement_expression
 from beatwise.model.kernel import Directive, Function, Invention, Problem, Program, Variable
 from beatwise.model.types import ArrayType, BurstPointerType, PointerType, ReferenceType, StreamType
-from beatwise.frontend.statements import pragma
 from beatwise.source.directives import pragmas_in
 
-STACK_BYTES = 512 * 1024 * 1024  #: for the thread that lowers: expressions nest deeply
+EXPRESSIONS = {**LOWER, kinds.STATEMENT_EXPRESSION: statement_expression}
+STACK_BYTES = 128 * 1024 * 1024  #: for the thread that lowers: expressions nest deeply
 RECURSION_LIMIT = 100_000
 
 
@@ -103,7 +104,7 @@ def _read(
         problems += _problems(unit, given, name)
         skipped = _skipped(unit, given)
         active = {file: _active(found, skipped.get(file, [])) for file, found in directives.items()}
-        units.append(Lowering(unit, given, path, INCLUDE_DIRECTORY, number, active, skipped, bool(made), LOWER))
+        units.append(Lowering(unit, given, path, INCLUDE_DIRECTORY, number, active, skipped, bool(made), EXPRESSIONS))
     definitions = [(one, cursor) for one in units for cursor in _survey(one)]
     linked = {usr(cursor): (one, cursor) for one, cursor in reversed(definitions)}
     for one in units:
@@ -205,12 +206,7 @@ def _likely_tops(
     definitions: Definitions, directives: Mapping[str, tuple[Directive, ...]], script: tuple[Directive, ...]
 ) -> Definitions:
     """Those with memory-mapped interface directives, else those with C linkage and pointers among their parameters."""
-    mapped = {
-        (one.place.file, one.place.offset)
-        for found in directives.values()
-        for one in found
-        if _is_mapped(one)
-    }
+    mapped = {(one.place.file, one.place.offset) for found in directives.values() for one in found if _is_mapped(one)}
     named = {one.options.get("function", "").rpartition("::")[2] for one in script if _is_mapped(one)}
     with_directive = [
         (one, cursor)
@@ -246,7 +242,7 @@ def _holds(given: Lowering, cursor: Cursor, places: set[tuple[str, int]]) -> boo
     return any(name == file.name and start <= offset < end for name, offset in places)
 
 
-def _has_memory(given: Lowering, cursor: Cursor, *, streams: bool = False) -> bool:
+def _has_memory(given: Lowering, cursor: Cursor) -> bool:
     lib = library()
     if given.name(cursor) == "main":
         return False
@@ -254,27 +250,29 @@ def _has_memory(given: Lowering, cursor: Cursor, *, streams: bool = False) -> bo
         of = given.type(lib.clang_Cursor_getArgument(cursor, index))
         if isinstance(of, ReferenceType):
             of = of.to
-        if isinstance(of, PointerType | ArrayType | BurstPointerType) or streams and isinstance(of, StreamType):
+        if isinstance(of, PointerType | ArrayType | BurstPointerType):
             return True
     return False
 
 
 def _uncalled(functions: Mapping[str, Function], keys: Sequence[str]) -> list[str]:
-    """The functions with memory among their parameters that no other one calls."""
+    """The functions with memory among their parameters that no other such function calls, on whatever way."""
+    candidates = [key for key in keys if key in functions and _takes_memory(functions[key])]
     called: set[str] = set()
-    for key, one in functions.items():
-        called |= {callee for callee in mentions(one) if callee != key}
-    found = []
-    for key in keys:
-        if key in called or key not in functions or functions[key].name == "main":
-            continue
-        types = [one.type.to if isinstance(one.type, ReferenceType) else one.type for one in functions[key].parameters]
-        if any(isinstance(of, PointerType | ArrayType | BurstPointerType | StreamType) for of in types):
-            found.append(key)
-    return found
+    for key in candidates:
+        if key not in called:
+            called |= _reachable(functions, mentions(functions[key]) - {key}).keys() - {key}
+    return [key for key in candidates if key not in called]
 
 
-def _reachable(functions: Mapping[str, Function], keys: Sequence[str]) -> dict[str, Function]:
+def _takes_memory(one: Function) -> bool:
+    if one.name == "main" or one.record is not None:
+        return False
+    types = [each.type.to if isinstance(each.type, ReferenceType) else each.type for each in one.parameters]
+    return any(isinstance(of, PointerType | ArrayType | BurstPointerType | StreamType) for of in types)
+
+
+def _reachable(functions: Mapping[str, Function], keys: Iterable[str]) -> dict[str, Function]:
     kept: dict[str, Function] = {}
     work = list(keys)[::-1]
     while work:
@@ -316,4 +314,3 @@ def _globals(units: Sequence[Lowering]) -> dict[str, Variable]:
             if key not in found or found[key].initial is None:
                 found[key] = made
     return found
-

@@ -55,10 +55,7 @@ def diagnostics(unit: TranslationUnit) -> list[Diagnostic]:
     """What the compiler complains of, in the order of its discovery."""
     if unit.handle is None:
         return []
-    return [
-        Diagnostic(severity, text, *location(raw, spelled=False))
-        for severity, text, _, raw in unit.diagnostics()
-    ]
+    return [Diagnostic(severity, text, *location(raw, spelled=False)) for severity, text, _, raw in unit.diagnostics()]
 
 
 def _line(given: Mapping[str, GivenFile], path: str, file: str, line: int) -> Place:

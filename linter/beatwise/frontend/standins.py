@@ -73,7 +73,7 @@ HOMES: tuple[tuple[str, tuple[str, ...]], ...] = (
         "numeric", "map", "queue", "type_traits", "cmath", "cstring", "cstdlib", "cstdio", "cstdint")),
 )
 
-InventionKind = Word["header", "include", "namespace", "type", "constant", "variable", "function", "macro", "member"]
+InventionKind = Word["header", "include", "namespace", "type", "constant", "function", "macro", "member"]
 
 
 @dataclass(frozen=True, slots=True)
@@ -155,6 +155,7 @@ class _Work:
         self.withdrawn: set[str] = set()
         self.done: set[tuple[str, ...]] = set()
         self.wrong: list[Diagnostic] = []
+        self.bold = False  #: also invent what the source seems to declare itself
 
     def repair(self, diagnostics: Sequence[Diagnostic]) -> bool:
         """Do the first class of repair that finds something to do."""
@@ -164,8 +165,11 @@ class _Work:
             *(self._withdraw, self._headers, self._homes, self._call_macros, self._shouted_macros, self._empty_macros, self._namespaces),
             *(self._types, self._methods, self._names, self._members, self._refit),
         )
-        self.wrong = wrong
-        return any(any([repair(one) for one in wrong]) for repair in classes)
+        self.wrong, self.bold = wrong, False
+        if any(any([repair(one) for one in wrong]) for repair in classes):
+            return True
+        self.bold = True
+        return any(any([repair(one) for one in wrong]) for repair in (self._types, self._names))
     # ------------------------------------------------------------------------------------------ the classes of repair
 
     def _tell_undefined_macros(self, diagnostics: Sequence[Diagnostic]) -> None:
@@ -177,15 +181,14 @@ class _Work:
         """The source declares after all what was stood in for."""
         if not (CONFLICT.search(one.text)):
             return False
-        named = re.findall(r"'(?:\w+::)*(\w+)[^']*'", one.text) or [self._word_at(one)]
-        changed = False
-        for name in {*named, self._word_at(one)}:
-            for key in [key for key in self.draft.names if key[1] == name]:
-                del self.draft.names[key]
-                changed = True
+        here = self._word_at(one)
+        named = re.findall(r"'(?:\w+::)*(\w+)[^']*'", one.text)
+        for name in [name for name in (here, *named) if name in self.draft.names][:1]:
+            del self.draft.names[name]
             self.withdrawn.add(name)
             self.inventions = {key: value for key, value in self.inventions.items() if value.name != name}
-        return changed
+            return True
+        return False
 
     def _headers(self, one: Diagnostic) -> bool:
         """A missing header: one of ours where the name is the same, else one that holds nothing."""
@@ -215,6 +218,8 @@ class _Work:
         name, scope = _missing_name(one), self._scope(one)
         if one.text.startswith("expected namespace name"):
             name = self._word_at(one)
+            outer = re.search(r"((?:\w+\s*::\s*)+)$", self._text_before(one))
+            scope = tuple(re.findall(r"\w+", outer[1])) if outer else ()
         elif not name or self._guess(one, name) != "namespace":
             return False
         if not name or name in self.withdrawn or (*scope, name) in self.draft.namespaces:
@@ -245,7 +250,7 @@ class _Work:
             return False
         changed = False
         for name in re.findall(r"\b[A-Z_][A-Z0-9_]{2,}\b", self._line(one)):
-            if any(re.search(rf"#\s*define\s+{name}\b", text) for text in self.texts.values()) or self._entry(name):
+            if any(re.search(rf"#\s*define\s+{name}\b", text) for text in self.texts.values()) or name in self.draft.names:
                 continue
             match strongest(kinds(name, self.texts.values())):
                 case "call macro":
@@ -267,9 +272,9 @@ class _Work:
             kind = "type"
         elif one.text.startswith("unknown type name") and kind not in ("template", "type"):
             bound = self._text_before(one).rstrip().endswith("[") or self._text_from(one, name).lstrip().startswith("]")
-            kind = "constant" if bound else "type"
+            kind = "constant" if bound or (name.isupper() and kind == "constant") else "type"
         if kind == "template":
-            return self._invent(scope, name, Entry("template", self._parameters(name)), "type", one)
+            return self._invent(scope, name, Entry("template", parameters=self._parameters(name)), "type", one)
         return kind == "type" and self._invent(scope, name, Entry("type"), "type", one)
 
     def _names(self, one: Diagnostic) -> bool:
@@ -281,11 +286,16 @@ class _Work:
         match kind:
             case "function" | "function template":
                 parameters = self._parameters(name) if kind == "function template" else ()
-                return self._invent(scope, name, Entry("function", parameters), "function", one)
+                return self._invent(scope, name, Entry("function", parameters=parameters), "function", one)
             case "variable":
-                return self._invent(scope, name, Entry("variable"), "variable", one)
+                return self._invent(scope, name, Entry("variable"), "constant", one)
             case _:
                 return self._invent(scope, name, Entry("constant"), "constant", one)
+
+    def _is_declared(self, name: str) -> bool:
+        """Whether the source seems to declare the type, so that it is missing only for another error's sake."""
+        declared = rf"\busing\s+{name}\s*=|\btypedef\b[^;{{}}]*\b{name}\s*(?:\[[^;]*\])?\s*;|\b(?:struct|class|enum|union)\s+{name}\s*[{{:]|\}}\s*{name}\s*;"
+        return any(re.search(declared, text) for text in self.texts.values())
 
     def _was_lost(self, name: str, one: Diagnostic) -> bool:
         """Whether the name is declared on a line with another error, which may have cost it its declaration."""
@@ -300,7 +310,7 @@ class _Work:
     def _methods(self, one: Diagnostic) -> bool:
         """A method of an unknown class, defined outside it."""
         found = re.match(r"out-of-line definition of '(\w+)' does not match any declaration in '(?:\w+::)*(\w+)'", one.text)
-        entry = self._entry(found[2]) if found else None
+        entry = self.draft.names.get(found[2]) if found else None
         if not found or entry is None:
             return False
         name, owner = found.groups()
@@ -325,7 +335,7 @@ class _Work:
         if holder == "_BwAny":
             members = self.draft.of_any
         else:
-            entry = self._entry(holder)
+            entry = self.draft.names.get(holder)
             if entry is None:
                 return False
             members = entry.members
@@ -339,16 +349,16 @@ class _Work:
         """A stand-in that turns out to be of the wrong kind."""
         text, word = one.text, self._word_at(one)
         words = set(re.findall(r"[A-Za-z_]\w*", self._line(one)))
-        here = {key: entry for key, entry in self.draft.names.items() if key[1] in words}
-        at = [entry for (_, name), entry in here.items() if name == word]
+        here = {name: entry for name, entry in self.draft.names.items() if name in words}
+        at = [here[word]] if word in here else []
         if NEEDS_VALUE.search(text):
             return self._make(_of(here.values(), "constant") or _of(self.draft.names.values(), "constant"), "bound")
         if "negative size" in text:
             less = {name for name in re.findall(r"-\s*(\w+)", self._line(one))}
-            return self._shrink([entry for (_, name), entry in here.items() if name in less])
+            return self._shrink([entry for name, entry in here.items() if name in less])
         if re.match("no matching function for call|cannot initialize|no matching member|assigning to", text):
-            loose = {key: entry for key, entry in self.draft.names.items() if entry.kind == "constant"}
-            inner = [entry for (_, name), entry in loose.items() if any(re.search(rf"\]\s*\[[^\]]*\b{name}\b", one) for one in self.texts.values())]
+            loose = {name: entry for name, entry in self.draft.names.items() if entry.kind == "constant"}
+            inner = [entry for name, entry in loose.items() if any(re.search(rf"\]\s*\[[^\]]*\b{name}\b", one) for one in self.texts.values())]
             return self._make(inner, "bound")
         if "type parameter must be a type" in text:
             return self._make(_of(at, "constant", "bound"), "type") or self._flip(here, "auto")
@@ -356,20 +366,23 @@ class _Work:
             return self._make(_of(at, "type"), "bound") or self._flip(here, "class")
         if "conditional expression is ambiguous" in text or "incompatible operand types" in text:
             named = set(re.findall(r"\w+", text))
-            plain = [entry for (_, name), entry in self.draft.names.items() if name in named and not entry.members]
+            plain = [entry for name, entry in self.draft.names.items() if name in named and not entry.members]
             return self._make(_of(plain, "type"), "number type")
         if re.search("subscripted value is not|cannot assign to|member reference base type|indirection requires", text):
             used = {name for name in words if re.search(rf"\b{name}\s*(?:\[|\.|->|[-+*/|&^]?=[^=]|\+\+|--)|\*\s*{name}\b", self._line(one))}
-            return self._make(_of([entry for (_, name), entry in here.items() if name in used], "constant"), "variable")
+            return self._make(_of([entry for name, entry in here.items() if name in used], "constant"), "variable")
         if re.search(r"called object type '(?:const )?int' is not a function|is not a function or function pointer", text):
             return self._make(_of(here.values(), "constant", "bound"), "function")
+        if text.startswith("function cannot return function type"):
+            wrapper = re.search(r"(\w+)\s*\(\s*\w+\s*\)\s*\(", self._line(one))
+            return wrapper is not None and self._macro(wrapper[1], f"{wrapper[1]}(...)", one, "__VA_ARGS__")
         if found := re.match(r"member initializer '(\w+)' does not name", text):
-            owners = [entry for (_, name), entry in here.items() if entry.kind == "type"]
+            owners = [entry for name, entry in here.items() if entry.kind == "type"]
             return bool(owners) and self._first("member", found[1], one.file) and self._member(owners[0], found[1], one)
         if re.match(r"expected|use of undeclared|unexpected", text):
-            for scope, name in [key for key, entry in here.items() if entry.kind == "function" and key[1].isupper()]:
-                if not scope and self._first("macro", name):
-                    del self.draft.names[scope, name]
+            for name in [name for name, entry in here.items() if entry.kind == "function" and name.isupper()]:
+                if self._first("macro", name):
+                    del self.draft.names[name]
                     self.inventions.pop(("function", name), None)
                     return self._macro(name, f"{name}(...)", one)
         return False
@@ -397,11 +410,15 @@ class _Work:
         self.inventions.setdefault((kind, name), Invention(name, kind, one.file, one.line))
 
     def _invent(self, scope: Scope, name: str, entry: Entry, kind: InventionKind, one: Diagnostic) -> bool:
-        if name in self.withdrawn or (scope, name) in self.draft.names:
+        if name in self.withdrawn or (not self.bold and self._is_declared(name)):
             return False
-        self.draft.add(scope, name, entry)
-        self._tell(name, kind, one)
-        return True
+        if name not in self.draft.names:
+            self.draft.add(name, entry)
+            self._tell(name, kind, one)
+        scopes = self.draft.names[name].scopes
+        new = scope not in scopes
+        scopes.add(scope)
+        return new
 
     def _macro(self, name: str, written: str, one: Diagnostic, text: str = "") -> bool:
         if name in self.withdrawn or written in self.draft.macros:
@@ -415,9 +432,9 @@ class _Work:
             entry.kind = kind
         return bool(entries)
 
-    def _flip(self, here: Mapping[tuple[Scope, str], Entry], wrong: Parameter) -> bool:
+    def _flip(self, here: Mapping[str, Entry], wrong: Parameter) -> bool:
         """Take every parameter of the line's templates for the other kind, once."""
-        changed = [entry for (_, name), entry in here.items() if entry.kind == "template" and self._first("flip", name, wrong)]
+        changed = [entry for name, entry in here.items() if entry.kind == "template" and self._first("flip", name, wrong)]
         right: Parameter = "class" if wrong == "class" else "auto"
         for entry in changed:
             entry.parameters = (right,) * len(entry.parameters)
@@ -450,7 +467,7 @@ class _Work:
                 return True, "auto" if re.match(r"[\d(]", replaced[1]) else "class"
         if re.fullmatch(rf"{BUILT_IN}|half", argument):
             return True, "class"
-        known = self._entry(argument)
+        known = self.draft.names.get(argument)
         if known is not None and known.kind in ("constant", "bound"):
             return False, "auto"
         return False, "class" if kinds(argument, self.texts.values()) & {"type", "template"} else "auto"
@@ -462,9 +479,6 @@ class _Work:
         if here == "namespace" and "type" not in used and "template" not in used:
             return "namespace"
         return strongest({*used, *((here,) if here else ())})
-
-    def _entry(self, name: str) -> Entry | None:
-        return next((entry for (_, key), entry in self.draft.names.items() if key == name), None)
 
     def _scope(self, one: Diagnostic) -> Scope:
         """The namespaces in which the name was looked for."""

@@ -10,7 +10,7 @@ from beatwise.frontend.declarations import declared
 from beatwise.frontend.heads import for_parts, if_parts
 from beatwise.frontend.libclang import Cursor, children, library, spelling
 from beatwise.frontend.lost import lost_between
-from beatwise.frontend.lowering import Lowering
+from beatwise.frontend.lowering import Lowering, operands
 from beatwise.frontend.options import with_numbers
 from beatwise.frontend.ranges import range_loop
 from beatwise.model.kernel import (
@@ -25,12 +25,13 @@ from beatwise.model.kernel import (
     Literal,
     Loop,
     Lost,
+    Opaque,
     Return,
     Statement,
     Switch,
     Variable,
 )
-from beatwise.model.types import IntType
+from beatwise.model.types import IntType, VoidType
 from beatwise.source.directives import parse_directive
 
 TRUTH = IntType(1, False, 1)
@@ -58,6 +59,19 @@ def _statements(given: Lowering, cursor: Cursor) -> list[Statement]:
         if below:
             return statements(given, below[-1])
     return [Lost("a statement of a kind not known here", given.place(cursor))]
+
+
+def statement_expression(given: Lowering, cursor: Cursor) -> Expression:
+    """``({ ...; value; })``: its statements come before the one it stands in."""
+    inner = [child for child in children(cursor) if child.kind == kinds.COMPOUND]
+    found = [one for child in (children(inner[0]) if inner else []) for one in _statements(given, child)]
+    last = found.pop() if found else None
+    given.scope.before += found
+    if isinstance(last, Evaluate):
+        return last.expression
+    if last is not None:
+        given.scope.before.append(last)
+    return Opaque("a statement without a value", (), VoidType(), given.place(cursor))
 
 
 def one(given: Lowering, cursor: Cursor) -> Statement:
@@ -152,13 +166,27 @@ def _body(given: Lowering, cursor: Cursor | None, loop: Cursor) -> tuple[Stateme
     return body, tuple(between)
 
 
+def _head(given: Lowering, cursor: Cursor) -> Expression:
+    """An expression in the head of a loop, which runs again in each round: no statement can come before it."""
+    before, given.scope.before = given.scope.before, []
+    value = given.expression(cursor)
+    if given.scope.before:
+        parts = [one.expression for one in given.scope.before if isinstance(one, Evaluate)]
+        parts += [
+            one.variable.initial for one in given.scope.before if isinstance(one, Declare) and one.variable.initial
+        ]
+        value = Opaque("statements within the head of a loop", (*parts, value), value.type, value.place)
+    given.scope.before = before
+    return value
+
+
 def _for(given: Lowering, cursor: Cursor) -> list[Statement]:
     parts = for_parts(given, cursor)
     initial = tuple(statements(given, parts.initial)) if parts.initial is not None else ()
     if parts.declared is not None:
         initial += tuple(declared(given, parts.declared))
-    condition = given.expression(parts.condition) if parts.condition is not None else None
-    step = given.expression(parts.step) if parts.step is not None else None
+    condition = _head(given, parts.condition) if parts.condition is not None else None
+    step = _head(given, parts.step) if parts.step is not None else None
     body, directives = _body(given, parts.body, cursor)
     return [Loop(initial, condition, step, body, True, None, directives, given.place(cursor))]
 
@@ -167,7 +195,7 @@ def _while(given: Lowering, cursor: Cursor) -> list[Statement]:
     parts = children(cursor)
     if len(parts) < 2:
         return _lost(given, cursor)
-    condition = given.expression(parts[-2])
+    condition = _head(given, parts[-2])
     body, directives = _body(given, parts[-1], cursor)
     if parts[0].kind == kinds.VARIABLE:  # declared anew in each round: while (int n = ...) ...
         fresh = declared(given, parts[0])
@@ -182,7 +210,7 @@ def _do(given: Lowering, cursor: Cursor) -> list[Statement]:
     if len(parts) != 2:
         return _lost(given, cursor)
     body, directives = _body(given, parts[0], cursor)
-    condition = given.expression(parts[1])
+    condition = _head(given, parts[1])
     if isinstance(condition, Literal) and condition.value == 0:  # do { ... } while (0), as macros are written
         if not _leaves(body):
             return [body]
@@ -252,40 +280,47 @@ def _switch(given: Lowering, cursor: Cursor) -> list[Statement]:
         before += declared(given, extra) if extra.kind == kinds.VARIABLE else statements(given, extra)
     subject = given.expression(parts[-2])
     outer, given.scope.directives = given.scope.directives, []
-    cases = _cases(given, parts[-1])
+    first, cases = _cases(given, parts[-1])
     given.scope.directives = outer
     place = given.place(cursor)
     switch = Switch(subject, tuple(cases), place)
+    before += first
     return [Block((*before, switch), place)] if before else [switch]
 
 
-def _cases(given: Lowering, body: Cursor) -> list[Case]:
+def _cases(given: Lowering, body: Cursor) -> tuple[list[Statement], list[Case]]:
+    """What is declared before the first label, and the arms."""
     inside = children(body) if body.kind == kinds.COMPOUND else [body]
-    cases: list[tuple[list[Expression | None], list[Statement], Cursor]] = []
     lost = lost_between(given, body, inside) if body.kind == kinds.COMPOUND else []
+    first: list[Statement] = []
+    arms: list[tuple[list[Expression | None], list[Statement], Cursor]] = []
     for index, cursor in enumerate(inside):
-        start, values = cursor, []
-        while cursor.kind in (kinds.CASE, kinds.DEFAULT):
-            below = children(cursor)
-            if cursor.kind == kinds.CASE and below:
-                values += _labels(given, below[:-1])
-            elif cursor.kind == kinds.DEFAULT:
-                values.append(None)
-            if not below:
-                break
-            cursor = below[-1]
+        values, statement = _arm(given, cursor)
         if values:
-            cases.append((values, [], start))
-        if cursor.kind in (kinds.CASE, kinds.DEFAULT):
-            continue
-        found: list[Statement] = [*(one for at, one in lost if at == index), *statements(given, cursor)]
-        if cases:
-            cases[-1][1].extend(found)
-        else:  # before the first label: only its declarations exist
-            cases.append(([], [one for one in found if isinstance(one, Declare)], cursor))
-    return [
-        Case(tuple(values), tuple(found), given.place(start)) for values, found, start in cases if values or found
-    ]
+            arms.append((values, [], cursor))
+        found: list[Statement] = [one for at, one in lost if at == index]
+        if statement is not None:
+            found += statements(given, statement)
+        if arms:
+            arms[-1][1].extend(found)
+        else:  # never runs, but its declarations exist
+            first += [one for one in found if isinstance(one, Declare | Lost)]
+    return first, [Case(tuple(values), tuple(found), given.place(start)) for values, found, start in arms]
+
+
+def _arm(given: Lowering, cursor: Cursor) -> tuple[list[Expression | None], Cursor | None]:
+    """The labels of a statement in a switch, and the statement itself."""
+    values: list[Expression | None] = []
+    while cursor.kind in (kinds.CASE, kinds.DEFAULT):
+        below = children(cursor)
+        if cursor.kind == kinds.DEFAULT:
+            values.append(None)
+        else:
+            values += _labels(given, below[:-1])
+        if not below:
+            return values, None
+        cursor = below[-1]
+    return values, cursor
 
 
 def _labels(given: Lowering, cursors: list[Cursor]) -> list[Expression | None]:
@@ -333,6 +368,12 @@ def _return(given: Lowering, cursor: Cursor) -> list[Statement]:
     return [Return(given.expression(below[0]) if below else None, given.place(cursor))]
 
 
+def _assembly(given: Lowering, cursor: Cursor) -> list[Statement]:
+    parts = tuple(given.expression(one) for one in operands(cursor))
+    place = given.place(cursor)
+    return [Evaluate(Opaque("inline assembly", parts, VoidType(), place), place)]
+
+
 def _try(given: Lowering, cursor: Cursor) -> list[Statement]:
     below = children(cursor)
     return [block(given, below[0])] if below else []
@@ -354,6 +395,7 @@ LOWER: dict[int, Callable[[Lowering, Cursor], list[Statement]]] = {
     kinds.COMPUTED_GOTO: lambda given, cursor: [Leave("goto", given.place(cursor))],
     kinds.RETURN: _return,
     kinds.TRY: _try,
+    kinds.ASSEMBLY: _assembly,
     kinds.EMPTY: lambda given, cursor: [],
 }
 

@@ -291,14 +291,18 @@ class Types:
         return RecordType(key, "" if name.startswith("(") else name, size, members, bases)
 
     def _fields(self, given: ClangType) -> tuple[tuple[Field, ...], bool]:
-        """The members, and whether the compiler's sizes of all of them are those of the model."""
+        """The members, those of anonymous ones among them; and whether the compiler's sizes are those of the model."""
         lib = library()
         found, exact = [], True
         for member in fields(given):
             declared = lib.clang_getCursorType(member)
             kind = self.read(declared)
             offset = lib.clang_Cursor_getOffsetOfField(member)
-            found.append(Field(spelling(member), kind, max(0, offset) // 8))
+            name, start = spelling(member), max(0, offset) // 8
+            if isinstance(kind, RecordType) and (not name or name.startswith("(")):  # its members count as ours
+                found += [Field(one.name, one.type, start + one.offset) for one in kind.fields]
+            else:
+                found.append(Field(name, kind, start))
             if isinstance(kind, IntType | RealType | VectorType | RecordType | ArrayType) and kind.bytes:
                 exact = exact and lib.clang_Type_getSizeOf(declared) == kind.bytes
         return tuple(found), exact

@@ -48,12 +48,14 @@ class Directive:
 class Literal:
     """A constant. ``value`` is an int where one is known, a float or str where it is that, else None.
 
-    Also what the compiler folds: enumerators, constexpr names, sizeof, substituted template parameters.
+    Also what the compiler folds: enumerators, constexpr names, sizeof, substituted template parameters. ``name`` is the
+    constant's, where it has one.
     """
 
     value: int | float | str | None
     type: Type
     place: Place
+    name: str | None = None
 
 
 @dataclass(frozen=True, slots=True)

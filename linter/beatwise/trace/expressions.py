@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from beatwise.model.form import ONE, ZERO, Form, negation, number, parameter, symbol_form
+from beatwise.model.form import ONE, ZERO, Form, Symbol, negation, number, parameter, symbol_form
 from beatwise.model.kernel import (
     Assign,
     Binary,
@@ -83,10 +83,12 @@ class Evaluator(Machine):
         match expression:
             case Literal(value=int() as plain):
                 return Number(number(int(plain)))
-            case Literal(place=place):
-                return self.lost("a constant whose value is not known", place) if expression.value is None else Number(
-                    depending()
-                )
+            case Literal(value=None, name=str() as name):
+                return Number(symbol_form(self.size_named(name)))
+            case Literal(value=None, place=place):
+                return self.lost("a constant whose value is not known", place)
+            case Literal():
+                return Number(depending())
             case Name() | Index() | Member():
                 spot = self.spot(expression, state)
                 assert spot is not None
@@ -560,15 +562,20 @@ class Evaluator(Machine):
             value = Number(fitted(value.form, bare(kind)))
         self._fill(root, kind, value, state)
 
+    def size_named(self, name: str) -> Symbol:
+        """A constant whose value is not in the source: a size that the user can give."""
+        if name not in self.given_used:
+            size = self.given.get(name)
+            self.given_used[name] = parameter(name, 0 if size is None else size, size)
+        return self.given_used[name]
+
     def _given(self, name: str, value: Number) -> Number:
         """A size that the user has given stands for a value that the source does not tell."""
         if name not in self.given or value.form.known is not None:
             return value
         if not any(symbol.kind in ("data", "unknown") for symbol in value.form.leaves()):
             return value
-        size = self.given[name]
-        symbol = self.given_used.setdefault(name, parameter(name, size, size))
-        return Number(symbol_form(symbol))
+        return Number(symbol_form(self.size_named(name)))
 
     def note_stream(self, variable: Variable, root: Root) -> None:
         """A declared FIFO, or array of FIFOs, is remembered."""

@@ -17,6 +17,7 @@ from beatwise.model.form import (
     data,
     floordiv,
     minimum,
+    mod,
     negation,
     number,
     substitute,
@@ -42,7 +43,7 @@ from beatwise.trace.values import (
     Spot,
     Value,
     depending,
-    shifted,
+    picked,
 )
 
 Cell = tuple[Root, Path]
@@ -120,7 +121,31 @@ class Looper(Caller):
         if self.scouting:
             return self._scouted(statement, state)
         changed_in_body, changed_in_step, hints = self._scout(statement, state)
-        return self._follow(statement, state, changed_in_body, changed_in_step, hints)
+        mark, begin = self.record.mark(), state.copy()
+        flow = self._follow(statement, state, changed_in_body, changed_in_step, hints, {})
+        turning = self._turning
+        if turning is not None and turning[0] is statement:
+            self._turning = None
+            self.record.cut(mark)
+            flow = self._follow(statement, begin, changed_in_body, changed_in_step, hints, turning[1])
+            self._turning = None
+        return flow
+
+    _turning: tuple[Loop, dict[Cell, list[Spot]]] | None = None
+
+    def _find_turning(self, statement: Loop, moving: list[Moving], end: State) -> None:
+        """Pointers that change their argument from one iteration to the next, as when two buffers are swapped."""
+        places: dict[Cell, list[Spot]] = {}
+        first = {m.cell: m.before.spot for m in moving if isinstance(m.before, Pointer)}
+        for m in moving:
+            held = end.cells.get(m.cell[0], {}).get(m.cell[1])
+            if not isinstance(m.before, Pointer) or not isinstance(held, Pointer):
+                continue
+            if m.after(held) is None:
+                others = [spot for spot in first.values() if _argument(spot) == _argument(held.spot)]
+                places[m.cell] = [m.before.spot, others[0] if others else held.spot]
+        if places and all(_argument(spot) is not None for spots in places.values() for spot in spots):
+            self._turning = (statement, places)
 
     # --------------------------------------------------------------------------------------------- scouting
 
@@ -175,6 +200,7 @@ class Looper(Caller):
         changed_in_body: set[Cell],
         changed_in_step: set[Cell],
         hints: Mapping[Root, Mapping[Path, Value]],
+        turning: Mapping[Cell, list[Spot]],
     ) -> Flow:
         loop_number = self.new_loop()
         name = statement.label or f"loop at line {statement.place.line}"
@@ -186,7 +212,10 @@ class Looper(Caller):
             loop_number, provisional, statement.place, self.frame.function.name, None, why_unknown="it was not followed"
         )
         entry = state.copy()
-        moving = self._enter(entry, changed_in_body | changed_in_step, hints, loop_number)
+        moving = self._enter(entry, (changed_in_body | changed_in_step) - turning.keys(), hints, loop_number)
+        for cell, spots in turning.items():
+            odd = mod(symbol_form(provisional), number(len(spots)))
+            self._set(entry, cell, Pointer(picked(odd, dict(enumerate(spots)), statement.place)))
         count_from = provisional
         early = self._step_only(statement, entry, moving, changed_in_body, provisional)
         trips_early: Form | None = None
@@ -223,6 +252,8 @@ class Looper(Caller):
                 condition = self.condition(statement.condition, end)
                 at_exit = end.copy()
         # what is carried
+        if end is not None and not turning:
+            self._find_turning(statement, moving, end)
         solved = self._solve(moving, end, count_from, loop_number, mark)
         values = solved.closed
         memo = {}
@@ -254,8 +285,9 @@ class Looper(Caller):
         )
         self.open = outer_open
         return self._leave(
-            statement, state, entry, end, at_exit, flow, moving, early, values, memo, final, trips, loop_number
-        )
+            statement, state, entry, end, at_exit, flow, moving, early, values, memo, final, trips, loop_number,
+            count_from, provisional,
+        )  # fmt: skip
 
     def _enter(
         self, entry: State, changed: set[Cell], hints: Mapping[Root, Mapping[Path, Value]], loop_number: int
@@ -490,6 +522,8 @@ class Looper(Caller):
         final: Symbol,
         trips: Trips,
         loop_number: int,
+        count_from: Symbol,
+        provisional: Symbol,
     ) -> Flow:
         """The state after the loop: every moved cell as it is when the counter has reached the trips."""
         broken = bool(flow.breaks or flow.returns)
@@ -505,7 +539,7 @@ class Looper(Caller):
                 else replace(unknown("trips that are not known", statement.place, self.open), low=0, high=top)
             )
             last = symbol_form(symbol)
-        at_last = {final: last}
+        at_last = {counter_symbol: last for counter_symbol in (final, count_from, provisional)}
         memo_last: dict[Symbol, Form] = {}
         source = end if end is not None else (flow.breaks[0] if flow.breaks else entry)
         result = State({}, state.guards)
@@ -575,6 +609,10 @@ class Looper(Caller):
         trips: Trips,
     ) -> None:
         """A local array that this loop alone fills in order, with values that the counter tells."""
+
+
+def _argument(spot: Spot) -> str | Root | None:
+    return spot.argument if isinstance(spot, MemorySpot) else spot.root if isinstance(spot, LocalSpot) else None
 
 
 def _can_move(spot: Spot) -> bool:

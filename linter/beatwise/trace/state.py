@@ -99,7 +99,7 @@ class State:
                 continue
             step = key[at]
             if step == ANY:
-                hazy = True
+                hazy = hazy or covers(key, path) or covers(path, key)
             elif isinstance(step, Form) and step.known is not None:
                 inner = self.read(LocalSpot(spot.root, (*path[:at], step, *path[at + 1 :]), spot.type), place)
                 if inner is not None:

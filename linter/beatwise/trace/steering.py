@@ -57,7 +57,7 @@ def exclusive(first: Access, second: Access) -> tuple[Guard, Guard] | None:
         for b in second.guards:
             if a is b or not (a.by_data and b.by_data):
                 continue
-            if a.condition == negation(b.condition) or _differ(a.condition, b.condition):
+            if a.condition == negation(b.condition) or b.condition == negation(a.condition) or _differ(a.condition, b.condition):
                 return a, b
     return None
 
@@ -91,5 +91,7 @@ def _chosen(access: Access, family: Sequence[Access], names: tuple[str, ...]) ->
             if pair is not None:
                 parting.add(pair[0])
     guards = tuple(replace(g, chooses=True) if g in parting else g for g in access.guards)
+    if not parting:
+        return access
     first = next(g for g in access.guards if g in parting)
     return replace(access, guards=guards, choice=Choice(compared(first.condition), first.place, names))

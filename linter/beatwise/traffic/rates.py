@@ -46,6 +46,7 @@ def measure(trace: Trace, board: Board, given: Mapping[str, int]) -> Measured:
     ``now_gbps`` counts bytes that the kernel uses. ``could_gbps`` is what the access would get if all traffic of its
     loop were long bursts on the widest port that pays, of nothing but used bytes. An access that runs once, or whose
     place is not known, gets ``now`` = ``could``: nothing is held against it, and it does not count for its interface.
+    The accesses are the trace's, less the guards that branches make up for between them (`effective_guards`).
     """
     accesses = trace.accesses
     places = seats(accesses)
@@ -58,6 +59,7 @@ def measure(trace: Trace, board: Board, given: Mapping[str, int]) -> Measured:
     traffic = []
     for index, (access, walk) in enumerate(zip(accesses, walks, strict=True)):
         why = blocked(index, walk, beside)
+        access = replace(access, guards=guards[index])
         traffic.append(_rated(access, walk, why, shares[index], places[index], ports[access.interface], board))
     totals = (_total(port, channels[port.name], traffic) for port in trace.interfaces)
     return Measured(tuple(traffic), tuple(totals))
@@ -73,18 +75,17 @@ def _walks(
     walks = []
     for index, (access, seat) in enumerate(zip(accesses, places, strict=True)):
         walk = runs.walk(access, given)
-        if seat.elements > 1 or guards[index] != access.guards:
+        if guards[index] != access.guards:
+            walk = runs.walk(replace(access, guards=guards[index]), given)
+            walk = replace(walk, executions=walk.executions and walk.executions / seat.alike)
+        if seat.elements > 1:
             size = access.element_bytes * seat.elements
-            head = replace(access, offset=accesses[seat.head].offset, guards=guards[index])
-            if seat.elements > 1:
-                head = replace(head, element_bytes=size, part_bytes=size)
-            whole = runs.walk(head, given)
-            if seat.elements == 1 or whole.pattern == "sequential":
-                run = None if whole.run_elements is None else whole.run_elements * seat.elements
-                shared = guards[index] != access.guards and whole.executions is not None
-                executions = whole.executions / seat.alike if shared else walk.executions
-                stride = access.element_bytes if seat.elements > 1 else whole.stride_bytes
-                walk = replace(whole, stride_bytes=stride, run_elements=run, executions=executions)
+            whole = replace(accesses[seat.head], guards=guards[index], element_bytes=size, part_bytes=size)
+            together = runs.walk(whole, given)
+            if together.pattern == "sequential" and together.run_elements is not None:
+                run = together.run_elements * seat.elements
+                stride = access.element_bytes
+                walk = replace(together, stride_bytes=stride, run_elements=run, executions=walk.executions)
         walks.append(walk)
     return tuple(walks)
 

@@ -34,7 +34,7 @@ def seats(accesses: Sequence[Access]) -> tuple[Seat, ...]:
     element. A window ``a[i]``, ``a[i + 1]`` is no sweep: it meets elements again in the next iteration.
     """
     keys = [_key(index, access) for index, access in enumerate(accesses)]
-    parts = [(key, access.part_bytes, _part(index, access)) for index, (key, access) in enumerate(zip(keys, accesses))]
+    parts = [(keys[index], access.part_bytes, _part(index, access)) for index, access in enumerate(accesses)]
     alike = Counter(parts)
     groups: dict[Hashable, list[int]] = defaultdict(list)
     for index, access in enumerate(accesses):
