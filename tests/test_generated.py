@@ -43,9 +43,9 @@ def certain_pattern(nest: Nest) -> str | None:
     return {1: "sequential", -1: "descending", 0: "repeated"}.get(step, "strided")
 
 
-def true_run(nest: Nest) -> float:
+def true_run(nest: Nest, pattern: str) -> float:
     """A repeated access has run 1, though it may move on by one element now and then."""
-    return 1.0 if certain_pattern(nest) == "repeated" else run_of(pieces(nest))
+    return 1.0 if pattern == "repeated" else run_of(pieces(nest))
 
 
 def wrong(nest: Nest, name: str, document: dict[str, object]) -> list[str]:
@@ -58,7 +58,7 @@ def wrong(nest: Nest, name: str, document: dict[str, object]) -> list[str]:
         return [f"{len(loads)} loads"]
     found = []
     (load,) = loads
-    run, pattern = true_run(nest), certain_pattern(nest)
+    run, pattern = true_run(nest, load["pattern"]), certain_pattern(nest)
     if load["run_elements"] is None or not agrees(load["run_elements"], run):
         found.append(f"run {load['run_elements']}, true {run}; {load['pattern']}, {load['reason']}")
     if pattern not in (None, load["pattern"]):

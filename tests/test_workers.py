@@ -2,14 +2,13 @@
 
 from __future__ import annotations
 
-import ctypes
 import os
-import time
 from pathlib import Path
 
 import pytest
 
 from beatwise.workers import Done, Limits, Lost, each
+from misbehaviour import work
 
 TIGHT = Limits(seconds=2.0, megabytes=400)
 
@@ -17,34 +16,6 @@ TIGHT = Limits(seconds=2.0, megabytes=400)
 @pytest.fixture(autouse=True)
 def workers_find_this_module(monkeypatch: pytest.MonkeyPatch) -> None:
     monkeypatch.setenv("PYTHONPATH", str(Path(__file__).parent))
-
-
-def work(item: int | str) -> int:
-    """What the workers are given: an item that is a number is squared, a word is misbehaviour."""
-    if item == "crash":
-        ctypes.string_at(0)
-    if item == "hang":
-        time.sleep(60)
-    if item == "spin":
-        while True:
-            pass
-    if item == "swallow":
-        held = []
-        while True:
-            held.append(bytearray(50_000_000))
-    if item == "gorge":
-        return len(bytearray(250_000_000))
-    if item == "pid":
-        return os.getpid()
-    if item == "abort":
-        os.abort()
-    if item == "raise":
-        raise KeyError("no such loop")
-    if item == "print":
-        os.write(1, b"not a result")
-        return 0
-    assert isinstance(item, int)
-    return item * item
 
 
 @pytest.mark.parametrize("jobs", [1, 2, 5])
@@ -76,7 +47,7 @@ def test_a_mistake_of_ours_is_told_in_one_line_with_its_place() -> None:
     (lost,) = each(work, ["raise"], limits=TIGHT)
     assert isinstance(lost, Lost)
     assert lost.why.startswith(
-        "a mistake in beatwise itself, please report it: KeyError: 'no such loop' (at tests/test_workers.py:"
+        "a mistake in beatwise itself, please report it: KeyError: 'no such loop' (at tests/misbehaviour.py:"
     )
     assert "\n" not in lost.why
 

@@ -123,15 +123,16 @@ def _by_cause(facts: Facts) -> Iterator[Finding]:
     for rule in BY_CAUSE:
         for finding in rule.find(facts):
             sites.setdefault(_site(finding), []).append(finding)
-    cures = {rule.name: rule.cures for rule in BY_CAUSE}
+    cures, order = {rule.name: rule.cures for rule in BY_CAUSE}, rule_names()
     for site, findings in sites.items():
         first, *later = findings
         if _is_told_elsewhere(first, facts):
             continue
         if site[2] is None:
             later += [other for key, others in sites.items() if key[:2] == site[:2] and key != site for other in others]
-        names = (finding.rule for finding in later if finding.rule not in cures[first.rule])
-        yield replace(first, then=tuple(sorted(set(names), key=rule_names().index)))
+        names = {finding.rule for finding in later} - cures[first.rule]
+        lesser = (name for name in names if order.index(name) > order.index(first.rule))
+        yield replace(first, then=tuple(sorted(lesser, key=order.index)))
 
 
 def _site(finding: Finding) -> Site:

@@ -10,6 +10,7 @@ from beatwise.model.traffic import Traffic
 from beatwise_rules.levels import weighed
 from beatwise_rules.wording import count, gbps, size
 
+MANY = 64  #: a rate that is left over by more accesses than this has another reason
 KNOWN_SIZES = ("constant", "given", "tripcount")  #: bases on which a time may be stated
 
 
@@ -77,11 +78,12 @@ def _arithmetic(facts: Facts, traffic: Traffic) -> str | None:
     if bus is None or traffic.now_gbps <= 0:
         return None
     how, rate = bus
-    access, beat_bytes = traffic.access, traffic.width_bits / 8
-    carried = max(beat_bytes, access.element_bytes)
-    used = access.part_bytes / (access.element_bytes if beat_bytes > access.element_bytes else carried)
+    access, beat_bytes = traffic.access, traffic.width_bits // 8
+    packed = beat_bytes > 1 << (access.element_bytes - 1).bit_length()  # several elements side by side in a beat
+    carried = access.element_bytes if packed else -(-access.element_bytes // beat_bytes) * beat_bytes
+    used = access.part_bytes / carried
     sharing = rate * used / traffic.now_gbps
-    if abs(sharing - round(sharing)) > 0.02 * sharing or round(sharing) < 1:
+    if not 0.9 < sharing < MANY or abs(sharing - round(sharing)) > 0.02 * sharing:
         return None
     if round(sharing) == 1 and used == 1:
         return f"{how}: "

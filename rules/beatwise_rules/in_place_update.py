@@ -31,7 +31,8 @@ Fast::
     }
 
 Sources: reads and writes travel on channels of their own, and AXI4 orders neither against the other (ARM IHI 0022,
-chapter A5); that HLS tools then make no bursts is common practice.
+chapter A5); a burst is all reads or all writes, with no dependency until it ends (HLS user guide UG1399 (2023.2),
+"Preconditions and Limitations of Burst Transfer").
 """
 
 from __future__ import annotations

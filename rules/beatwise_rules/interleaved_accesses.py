@@ -35,7 +35,7 @@ Fast::
     }
 
 Sources: one address channel for each direction (AXI4: ARM IHI 0022, chapter A1); at most one array per port and
-direction bursts at a time: common practice.
+direction bursts at a time (HLS user guide UG1399 (2023.2), "Preconditions and Limitations of Burst Transfer").
 """
 
 from __future__ import annotations

@@ -73,10 +73,12 @@ def find(facts: Facts) -> Iterator[Finding]:
 def is_narrow(traffic: Traffic) -> bool:
     """Whether an element walked in order is narrow, and stays so: a block that goes away may let the port widen."""
     walk, access = traffic.walk, traffic.access
-    if walk.pattern != "sequential" or access.element_bytes * 8 >= NARROW_BITS or traffic.width_bits >= NARROW_BITS:
+    own_bits = 8 << (access.element_bytes - 1).bit_length()  # an element has a beat that is a power of two
+    is_wide = traffic.width_bits >= NARROW_BITS and traffic.width_bits > own_bits
+    if walk.pattern != "sequential" or access.element_bytes * 8 >= NARROW_BITS or is_wide:
         return False
-    wide_bytes = NARROW_BITS // 8
-    widens_unblocked = traffic.blocked and walk.run_multiple % wide_bytes == 0 and walk.start_multiple % wide_bytes == 0
+    wide = NARROW_BITS // 8
+    widens_unblocked = traffic.blocked and walk.run_multiple % wide == 0 and walk.start_multiple % wide == 0
     return not widens_unblocked and not is_tiny(traffic)
 
 

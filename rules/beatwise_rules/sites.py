@@ -54,7 +54,7 @@ def working_loop(access: Access) -> LoopInstance | None:
 
 
 def data_in(form: Form) -> tuple[Symbol, ...]:
-    """The data that a form is made of, in the order of the source; that which it only hangs on where there is no other."""
+    """The data that a form is made of, in the order of the source; what it only hangs on where there is no other."""
     found = _made_of(form) or {symbol for symbol in form.leaves() if symbol.kind == "data"}
     return tuple(sorted(found, key=lambda symbol: symbol.number))
 

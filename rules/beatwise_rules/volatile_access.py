@@ -28,7 +28,8 @@ Fast::
     }
 
 Sources: accesses through volatile lvalues happen strictly by the rules of the abstract machine (ISO C++17,
-[intro.execution]); that HLS tools make no bursts of them is common practice.
+[intro.execution]); volatile disables bursts (HLS user guide UG1399 (2023.2), "Preconditions and Limitations of Burst
+Transfer").
 """
 
 from __future__ import annotations

@@ -73,7 +73,7 @@ def says(entry: Mapping[str, Any], one: Expectation) -> bool:
         one.stride_bytes in (None, entry["stride_bytes"]),
         one.element_bytes in (None, entry["element_bytes"]),
         one.basis in (None, entry["basis"]),
-        "steered" in one.patterns or one.joined or entry["guarded"] == one.guarded,
+        "steered" in one.patterns or one.joined is not None or entry["guarded"] == one.guarded,
         all(BLOCKED_BY[rule] in entry["blocked"] for rule in one.tells if rule in BLOCKED_BY),
     )
     return all(facts)

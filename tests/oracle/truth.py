@@ -19,7 +19,7 @@ Two patterns, as in ``sequential/indirect``, are both true: runs whose starts co
 ``run=`` is in elements; ``run=data`` says that only the data of the day decide it, ``run=unknown`` that something
 not given to the analysed program does. It may be left out for patterns
 whose run is 1 and for ``steered``, ``indirect``, ``irregular`` and ``unresolved``. ``joined`` measures all sites of the
-kernel on this argument and direction that are marked so as one sequence. ``guarded``, ``basis=`` and ``tells=`` cannot
+kernel on this argument and direction that are marked so as one sequence; ``joined=NAME`` those of that name. ``guarded``, ``basis=`` and ``tells=`` cannot
 be seen in addresses; they are for the comparison with the analysed program.
 """
 
@@ -56,7 +56,7 @@ class Expectation:
     stride_bytes: int | None = None
     element_bytes: int | None = None
     guarded: bool = False
-    joined: bool = False
+    joined: str | None = None
     basis: str | None = None
     tells: tuple[str, ...] = ()
 
@@ -134,7 +134,7 @@ def expectations_of(line: int, text: str) -> list[Expectation]:
         raise ValueError(f"line {line}: {text}")
     values = dict(fact.split("=", 1) for fact in facts if "=" in fact and not fact.startswith("tells="))
     flags = {fact for fact in facts if "=" not in fact}
-    unknown = (flags - {"guarded", "joined"}) | (set(values) - {"run", "stride", "element", "basis"})
+    unknown = (flags - {"guarded", "joined"}) | (set(values) - {"run", "stride", "element", "basis", "joined"})
     if unknown:
         raise ValueError(f"line {line}: {' '.join(sorted(unknown))}")
     tells = tuple(fact.removeprefix("tells=") for fact in facts if fact.startswith("tells="))
@@ -153,7 +153,7 @@ def expectations_of(line: int, text: str) -> list[Expectation]:
             int(stride) if stride else None,
             int(element) if element else None,
             "guarded" in flags,
-            "joined" in flags,
+            values.get("joined", "" if "joined" in flags else None),
             values.get("basis"),
             tells,
         )
@@ -195,9 +195,10 @@ def describes(expectation: Expectation, site: Observed, joined: Sequence[Observe
 
 def joined_with(expectation: Expectation, truth: Truth, observed: Sequence[Observed]) -> list[Observed]:
     """The sites that make one sequence with those of ``expectation``: all marked so on its argument and direction."""
-    if not expectation.joined:
+    if expectation.joined is None:
         return []
-    keys = {one.key for one in truth.expectations if one.joined and one.key[1:] == expectation.key[1:]}
+    together = (expectation.joined, *expectation.key[1:])
+    keys = {one.key for one in truth.expectations if (one.joined, *one.key[1:]) == together}
     return [site for site in observed if (site.line, site.argument, site.direction) in keys]
 
 

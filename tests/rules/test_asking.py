@@ -230,6 +230,12 @@ def test_what_a_port_is_shared_by_is_spelt_out() -> None:
     assert last_line(kernel).startswith("4 bytes a cycle at 300 MHz: 1.20 GB/s, shared by 2 accesses: 0.60 GB/s")
 
 
+def test_elements_that_do_not_fill_their_beat_are_reckoned_with() -> None:
+    kernel = Kernel().access("x", 12, [I], now=3.6, limit="width", element=12, width=128, beats=16, multiple=4)
+    finding = next(finding for finding in RULES[-4].find(kernel.facts()))
+    assert finding.because[-1].startswith("16 bytes a cycle at 300 MHz: 4.80 GB/s, 75 % of it used: 3.60 GB/s")
+
+
 def test_arithmetic_that_does_not_give_the_rate_is_not_shown() -> None:
     kernel = Kernel().access("x", 12, [I], now=0.7, limit="width", beats=16, multiple=4)
     assert last_line(kernel) == "It gets 0.70 GB/s; long full-width bursts would get 13.3 GB/s."

@@ -15,6 +15,7 @@ from rules.builders import Kernel, at, choice, guard, loaded, loop, over
 
 FIND = {rule.name: rule.find for rule in RULES}
 I = loop("i", 10, 65536)  # noqa: E741
+GUARDED: dict[str, Any] = {"guards": (guard("power", 13, I),), "blocked": ["data-dependent-guard"]}
 DIRECTIONS: tuple[Direction, ...] = ("read", "write")
 RAY, GATE = loop("ray", 10, 360), loop("gate", 11, 1024)
 
@@ -241,8 +242,7 @@ def test_lanes_of_an_unrolled_loop_make_up_the_word() -> None:
 
 
 def test_a_guarded_store_names_the_condition_and_the_odds() -> None:
-    kernel = Kernel().access("echo", 14, [I], direction="write", run=2, basis="data", guards=(guard("power", 13, I),),
-                             blocked=["data-dependent-guard"])  # fmt: skip
+    kernel = Kernel().access("echo", 14, [I], direction="write", run=2, basis="data", **GUARDED)
     finding = one("guarded-access", kernel)
     assert finding.message == "`echo` is written only when `power` allows it, so no burst can promise the write."
     assert finding.because[:2] == (
@@ -254,8 +254,7 @@ def test_a_guarded_store_names_the_condition_and_the_odds() -> None:
 
 def test_a_packed_store_is_told_to_collect_not_to_write_always() -> None:
     packed = symbol_form(carried("kept", I.number)) * 4
-    kernel = Kernel().access("out", 14, [I], packed, direction="write", run=500, basis="data", guards=(guard("dbz", 13, I),),
-                             blocked=["data-dependent-guard"])  # fmt: skip
+    kernel = Kernel().access("out", 14, [I], packed, direction="write", run=500, basis="data", **GUARDED)
     finding = one("guarded-access", kernel)
     assert finding.because[1].startswith("The addresses follow each other")
     assert finding.instead.startswith("Collect the accepted elements on chip and write 256 elements (1 KiB) at a time")
@@ -266,7 +265,7 @@ def test_a_guard_that_does_not_block_is_left_in_peace() -> None:
 
 
 def test_a_guarded_load_is_told_to_read_always() -> None:
-    kernel = Kernel().access("echo", 14, [I], guards=(guard("power", 13, I),), blocked=["data-dependent-guard"])
+    kernel = Kernel().access("echo", 14, [I], **GUARDED)
     assert one("guarded-access", kernel).instead.startswith("Read `echo` in every iteration")
 
 

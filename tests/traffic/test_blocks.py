@@ -141,7 +141,7 @@ def test_leaving_a_helper_early_is_a_guard() -> None:
 def test_a_length_loaded_before_the_loop_is_free() -> None:
     """for (k = row[r]; k < row[r+1]; k++) y += val[k];"""
     r = loop("r", 8)
-    k = loop("k", symbol_form(forms.data("row", place(), (r.number,), low=5, high=9)), data_exit=place())
+    k = loop("k", symbol_form(forms.data("row", place(), (r.number,), low=5, high=9)))
     first = symbol_form(forms.data("row", place(), (r.number,), low=0, high=400))
     assert blocked(read("val", (first + at(k)) * 4, r, k)) == [()]
 

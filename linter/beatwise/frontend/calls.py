@@ -227,7 +227,7 @@ def constructed(callee: Callee, arguments: tuple[Expression, ...], of: Type, pla
                 return only
             if isinstance(of, IntType | RealType) and isinstance(only.type, IntType | RealType | RecordType):
                 return converted(only, of, place)
-            if isinstance(of, PointerType | ArrayType) and isinstance(only.type, PointerType | ArrayType):
+            if isinstance(of, PointerType) and isinstance(only.type, PointerType | ArrayType):
                 return converted(only, of, place)
         if not arguments and isinstance(of, IntType | RealType | PointerType):
             return Literal(0, of, place)

@@ -12,7 +12,7 @@ FIRST_VALUE, VALUE_STEP = 64, 16  #: invented values that C++ insists on; distin
 Scope = tuple[str, ...]  #: namespaces, outermost first; empty for the global one
 EntryKind = Word["type", "number type", "template", "constant", "bound", "variable", "function"]
 MemberKind = Word["value", "type", "function", "constant"]
-Parameter = Word["class", "auto"]
+Parameter = str  #: ``class``, ``auto``, or the type of a value
 
 
 @dataclass(slots=True)

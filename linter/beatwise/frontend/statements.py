@@ -13,9 +13,9 @@ from beatwise.frontend.lost import lost_between
 from beatwise.frontend.lowering import Lowering, operands
 from beatwise.frontend.options import with_numbers
 from beatwise.frontend.ranges import range_loop
+from beatwise.frontend.switches import switch
 from beatwise.model.kernel import (
     Block,
-    Case,
     Declare,
     Directive,
     Evaluate,
@@ -172,9 +172,8 @@ def _head(given: Lowering, cursor: Cursor) -> Expression:
     value = given.expression(cursor)
     if given.scope.before:
         parts = [one.expression for one in given.scope.before if isinstance(one, Evaluate)]
-        parts += [
-            one.variable.initial for one in given.scope.before if isinstance(one, Declare) and one.variable.initial
-        ]
+        made = [one.variable for one in given.scope.before if isinstance(one, Declare)]
+        parts += [variable.initial for variable in made if variable.initial is not None]
         value = Opaque("statements within the head of a loop", (*parts, value), value.type, value.place)
     given.scope.before = before
     return value
@@ -271,70 +270,6 @@ def _if(given: Lowering, cursor: Cursor) -> list[Statement]:
     return [If(initial, condition, yes, no, given.place(cursor))]
 
 
-def _switch(given: Lowering, cursor: Cursor) -> list[Statement]:
-    parts = children(cursor)
-    if len(parts) < 2:
-        return _lost(given, cursor)
-    before: list[Statement] = []
-    for extra in parts[:-2]:
-        before += declared(given, extra) if extra.kind == kinds.VARIABLE else statements(given, extra)
-    subject = given.expression(parts[-2])
-    outer, given.scope.directives = given.scope.directives, []
-    first, cases = _cases(given, parts[-1])
-    given.scope.directives = outer
-    place = given.place(cursor)
-    switch = Switch(subject, tuple(cases), place)
-    before += first
-    return [Block((*before, switch), place)] if before else [switch]
-
-
-def _cases(given: Lowering, body: Cursor) -> tuple[list[Statement], list[Case]]:
-    """What is declared before the first label, and the arms."""
-    inside = children(body) if body.kind == kinds.COMPOUND else [body]
-    lost = lost_between(given, body, inside) if body.kind == kinds.COMPOUND else []
-    first: list[Statement] = []
-    arms: list[tuple[list[Expression | None], list[Statement], Cursor]] = []
-    for index, cursor in enumerate(inside):
-        values, statement = _arm(given, cursor)
-        if values:
-            arms.append((values, [], cursor))
-        found: list[Statement] = [one for at, one in lost if at == index]
-        if statement is not None:
-            found += statements(given, statement)
-        if arms:
-            arms[-1][1].extend(found)
-        else:  # never runs, but its declarations exist
-            first += [one for one in found if isinstance(one, Declare | Lost)]
-    return first, [Case(tuple(values), tuple(found), given.place(start)) for values, found, start in arms]
-
-
-def _arm(given: Lowering, cursor: Cursor) -> tuple[list[Expression | None], Cursor | None]:
-    """The labels of a statement in a switch, and the statement itself."""
-    values: list[Expression | None] = []
-    while cursor.kind in (kinds.CASE, kinds.DEFAULT):
-        below = children(cursor)
-        if cursor.kind == kinds.DEFAULT:
-            values.append(None)
-        else:
-            values += _labels(given, below[:-1])
-        if not below:
-            return values, None
-        cursor = below[-1]
-    return values, cursor
-
-
-def _labels(given: Lowering, cursors: list[Cursor]) -> list[Expression | None]:
-    """The values of one label; ``case 1 ... 4`` is four."""
-    values = [given.expression(cursor) for cursor in cursors]
-    if len(values) == 2 and all(isinstance(one, Literal) and isinstance(one.value, int) for one in values):
-        first, last = values
-        assert isinstance(first, Literal) and isinstance(last, Literal)
-        assert isinstance(first.value, int) and isinstance(last.value, int)
-        if 0 <= last.value - first.value <= 4096:
-            return [replace(first, value=value) for value in range(first.value, last.value + 1)]
-    return list(values)
-
-
 # ----------------------------------------------------------------------------------------------------------- others
 
 
@@ -388,7 +323,7 @@ LOWER: dict[int, Callable[[Lowering, Cursor], list[Statement]]] = {
     kinds.RANGE_FOR: _range_for,
     kinds.LABEL: _label,
     kinds.IF: _if,
-    kinds.SWITCH: _switch,
+    kinds.SWITCH: lambda given, cursor: switch(given, cursor, statements),
     kinds.BREAK: lambda given, cursor: [Leave("break", given.place(cursor))],
     kinds.CONTINUE: lambda given, cursor: [Leave("continue", given.place(cursor))],
     kinds.GOTO: lambda given, cursor: [Leave("goto", given.place(cursor))],

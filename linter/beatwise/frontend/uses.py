@@ -1,22 +1,43 @@
-"""What an unknown name must be, as far as its uses in the source tell: a namespace, a type, a constant, a function..."""
+"""What an unknown name must be, as far as its uses in the source tell: a namespace, a type, a constant, a function."""
 
 from __future__ import annotations
 
 import re
-from collections.abc import Iterable, Iterator
+from collections.abc import Iterable, Iterator, Set
 from typing import Literal as Word
 
-Kind = Word["namespace", "template", "type", "empty macro", "call macro", "function template", "function", "variable", "constant"]
+Kind = Word[
+    "namespace",
+    "template",
+    "type",
+    "empty macro",
+    "call macro",
+    "function template",
+    "function",
+    "variable",
+    "constant",
+]
 
 #: A name used in several ways is the first of these that fits.
 STRONGEST: tuple[Kind, ...] = (
-    *("template", "type", "empty macro", "namespace", "call macro", "function template", "function", "variable", "constant"),
+    *(
+        "template",
+        "type",
+        "empty macro",
+        "namespace",
+        "call macro",
+        "function template",
+        "function",
+        "variable",
+        "constant",
+    ),
 )
 
 BUILT_IN = r"(?:void|bool|char|short|int|long|float|double|signed|unsigned|auto)"
 DECLARING = rf"(?:{BUILT_IN}|static|inline|extern|const|constexpr|volatile|template|struct|class|typedef|typename)\b"
 COMMENT_OR_TEXT = re.compile(r"//[^\n]*|/\*.*?\*/|\"(?:\\.|[^\"\\\n])*\"|'(?:\\.|[^'\\\n])*'", re.DOTALL)
 TEMPLATE_OPENING = re.compile(r"[A-Za-z_]\w*\s*<(?:[^;(){}<>]|<[^;(){}<>]*>)*$")
+QUALIFIER = re.compile(r"(?:\w+\s*::\s*)+$|(?<![\w>])::\s*$")
 BEFORE, AFTER = 300, 600  #: characters looked at on either side of a use
 
 #: Templates whose first argument is a type, and whose others are numbers.
@@ -35,7 +56,9 @@ def bare(text: str) -> str:
     'a = 1;     '
     """
     blanked = COMMENT_OR_TEXT.sub(lambda found: re.sub(r"[^\n]", " ", found.group()), text)
-    return re.sub(r"^[ \t]*#[ \t]*(?:include|pragma)[^\n]*", lambda found: " " * len(found.group()), blanked, flags=re.M)
+    return re.sub(
+        r"^[ \t]*#[ \t]*(?:include|pragma)[^\n]*", lambda found: " " * len(found.group()), blanked, flags=re.M
+    )
 
 
 def kinds(name: str, texts: Iterable[str]) -> frozenset[Kind]:
@@ -56,11 +79,11 @@ def strongest(found: Iterable[Kind]) -> Kind:
 def kind_of(name: str, before: str, after: str) -> Kind | None:
     """What one use of a name speaks for, from the text on either side of it; None where it says nothing.
 
-    >>> kind_of("N", "for (i = 0; i < ", "; i++)"), kind_of("radar", "", "::gate g;"), kind_of("M", "", "<float, 4> m(3);")
+    >>> kind_of("N", "i < ", "; i++)"), kind_of("radar", "", "::gate g;"), kind_of("M", "", "<float, 4> m(3);")
     ('constant', 'namespace', 'template')
     """
     after_directive = re.search(r"(?:^|\n)[ \t]*#[^\n]*\n\s*$", before)
-    before, after = before.rstrip(), after.lstrip()
+    before, after = QUALIFIER.sub("", before).rstrip(), after.lstrip()
     if re.match(r"<", after):
         return _before_angle(after)
     if after.startswith("::"):
@@ -77,16 +100,22 @@ def kind_of(name: str, before: str, after: str) -> Kind | None:
         return "type" if after[0] in "*&" else _argument(name, before)
     if re.match(rf"(?:(?:const|volatile)\s+)?(?!const|volatile){DECLARING}", after):
         return "empty macro"
-    if (begins and (not after or after[0] == "}" or re.match(r"[A-Za-z_]\w*\s+[A-Za-z_]", after) and not re.match(r"const\b", after))) or (
-        before[-1:] in ("*", "&") and re.match(r"[A-Za-z_]\w*\s*[,)=;[]", after)
-    ):
+    if (
+        begins
+        and (
+            not after
+            or after[0] == "}"
+            or re.match(r"[A-Za-z_]\w*\s+[A-Za-z_]", after)
+            and not re.match(r"const\b", after)
+        )
+    ) or (before[-1:] in ("*", "&") and re.match(r"[A-Za-z_]\w*\s*[,)=;[]", after)):
         return "empty macro"
     if before.endswith("(") and (cast := re.match(r"(\**)\s*\)\s*(.?)", after)):
         if cast[1] or re.search(r"\bsizeof\s*\($", before) or re.match(r"[\w(]", cast[2]) and _is_cast(before):
             return "type"
         return "constant"
     if re.match(r"(?:const\b\s*)?[*&]*\s*(?:const\b\s*)?[A-Za-z_]\w*\s*[;,=)(\[{:<]", after) and (
-        begins or (before[-1:] in "(,<" and (not after[0] in "*&"))
+        begins or (before[-1:] in "(,<" and (after[0] not in "*&"))
     ):
         return "type"
     if after.startswith("("):
@@ -178,3 +207,40 @@ def _argument(name: str, before: str) -> Kind:
     if name.isupper() or re.fullmatch(r"[A-Z0-9_]+", name):
         return "type" if re.search(r"(?:^T_|_T$|TYPE|^T$)", name) else "constant"
     return "type"
+
+
+def template_parameters(name: str, texts: Iterable[str], values: Set[str]) -> tuple[str, ...]:
+    """The template parameters (``class``, or the type of a value) that all uses of the name together ask for.
+
+    ``values`` are names known to be constants.
+    """
+    texts = tuple(texts)
+    found: list[tuple[int, str]] = []
+    for arguments in argument_lists(name, texts):
+        for at, argument in enumerate(arguments):
+            told = _parameter(argument, texts, values)
+            if at == len(found):
+                found.append(told)
+            elif told[0] > found[at][0]:
+                found[at] = told
+    return tuple(kind for _, kind in found)
+
+
+def _parameter(argument: str, texts: Iterable[str], values: Set[str]) -> tuple[int, str]:
+    """What parameter a template argument asks for, after how sure that is."""
+    if re.match(r"[\d'\"(!~-]|true\b|false\b|sizeof\b", argument) or re.search(r"\w\s*[+*/%-]\s*\w", argument):
+        return 1, "int"
+    if not re.fullmatch(r"[A-Za-z_]\w*", argument) or re.fullmatch(rf"{BUILT_IN}|half", argument):
+        return 1, "class"
+    typed = rf"\b((?:unsigned\s+)?int|unsigned|size_t|bool|u?int\d+_t)\s+{argument}\b(?!\s*\()"
+    named = rf"\b(?:typename|class|struct)\s+{argument}\b|\btypedef\b[^;]*\b{argument}\s*;|\busing\s+{argument}\s*="
+    for text in texts:
+        if value := re.search(typed, text):
+            return 2, value[1]
+        if re.search(named, text):
+            return 2, "class"
+        if replaced := re.search(rf"#\s*define\s+{argument}\s+(\S+)", text):
+            return 1, "int" if re.match(r"[\d(]", replaced[1]) else "class"
+    if argument in values:
+        return 0, "int"
+    return 0, "class" if kinds(argument, texts) & {"type", "template"} else "int"

@@ -141,7 +141,9 @@ class Form:
             if at == 1:
                 rest = tuple(other for other in monomial if other is not symbol)
                 terms[rest] = terms.get(rest, 0) + factor
-            if any(other.kind != "counter" and symbol in _leaves_of(other) for other in monomial if other is not symbol):
+            if any(
+                other.kind != "counter" and symbol in _leaves_of(other) for other in monomial if other is not symbol
+            ):
                 return None
         return Form(terms)
 
@@ -223,7 +225,9 @@ def carried(name: str, loop: int, low: int | None = None, high: int | None = Non
     return Symbol("carried", name, next(_numbers), loop=loop, low=low, high=high)
 
 
-def unknown(reason: str, place: Place | None, loops: tuple[int, ...] = (), depends: frozenset[Symbol] = frozenset()) -> Symbol:
+def unknown(
+    reason: str, place: Place | None, loops: tuple[int, ...] = (), depends: frozenset[Symbol] = frozenset()
+) -> Symbol:
     """A value that could not be followed."""
     return Symbol("unknown", "?", next(_numbers), place=place, reason=reason, loops=loops, depends=depends)
 
@@ -281,9 +285,7 @@ def _product(
     return None, None
 
 
-def _operation_bounds(
-    name: str, operands: tuple[Form, ...], table: tuple[int, ...]
-) -> tuple[int | None, int | None]:
+def _operation_bounds(name: str, operands: tuple[Form, ...], table: tuple[int, ...]) -> tuple[int | None, int | None]:
     if name in ("lt", "le", "eq", "ne", "not", "and?", "or?"):
         return 0, 1
     if name == "lookup" and table:
@@ -458,7 +460,9 @@ def negation(condition: Form) -> Form:
         if factor == 1 and len(monomial) == 1 and monomial[0].kind == "operation":
             symbol = monomial[0]
             if symbol.name == "not":
-                return symbol.operands[0] if _is_truth(symbol.operands[0]) else operation("ne", symbol.operands[0], ZERO)
+                return (
+                    symbol.operands[0] if _is_truth(symbol.operands[0]) else operation("ne", symbol.operands[0], ZERO)
+                )
             if symbol.name == "lt":
                 return less(symbol.operands[1], symbol.operands[0] + 1)
             if symbol.name == "eq":

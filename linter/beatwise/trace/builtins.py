@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
 from dataclasses import replace
 
 from beatwise.model.access import LoopInstance
@@ -30,8 +29,6 @@ from beatwise.model.types import (
     IntType,
     PointerType,
     RealType,
-    RecordType,
-    ReferenceType,
     StreamType,
     Type,
     VectorType,
@@ -82,7 +79,10 @@ class Builtins(Evaluator):
             return Number(select(less(form, ZERO), -form, form))
         if name == "swap" and len(call.arguments) == 2:
             return self._swap(call.arguments[0], call.arguments[1], call.place, state)
-        if name in ("move", "forward", "ref", "cref", "as_const", "addressof", "reg", "launder") and len(call.arguments) == 1:
+        if (
+            name in ("move", "forward", "ref", "cref", "as_const", "addressof", "reg", "launder")
+            and len(call.arguments) == 1
+        ):
             spot = self.spot(call.arguments[0], state)
             return Pointer(spot) if spot is not None else self.value(call.arguments[0], state)
         if name in ("__builtin_expect", "assume") and call.arguments:
@@ -215,19 +215,18 @@ class Builtins(Evaluator):
 
     def _burst_request(self, call: Call, kind: BurstPointerType, state: State) -> Value:
         """``read_request(offset, length)`` and ``write_request`` are the accesses; the beats that follow are theirs."""
+        assert call.receiver is not None
         name = call.name
         values = [self.value(argument, state) for argument in call.arguments]
         if name in ("read_request", "write_request") and len(values) == 2:
-            spot = self._object(call.receiver, state) if call.receiver is not None else LostSpot("no object")
-            held = spot
-            base = self._burst_base(held, kind, state, call.place)
+            base = self._burst_base(self._object(call.receiver, state), kind, state, call.place)
             start = shifted(base, self._form_of(values[0]), kind.to)
             direction = "read" if name == "read_request" else "write"
             self.run_of(start, self._form_of(values[1]), direction, call.place, state, kind.to, manual=True)
             return NOTHING
         if name == "read":
-            base = self._burst_base(self._object(call.receiver, state), kind, state, call.place) if call.receiver else None
-            argument = base.argument if isinstance(base, MemorySpot) else "a burst"
+            burst = self._burst_base(self._object(call.receiver, state), kind, state, call.place)
+            argument = burst.argument if isinstance(burst, MemorySpot) else "a burst"
             drawn = Number(symbol_form(data(argument, call.place, self.open)))
             return drawn
         return NOTHING
@@ -242,7 +241,15 @@ class Builtins(Evaluator):
     # ------------------------------------------------------------------------------------------------- copies
 
     def run_of(
-        self, start: Spot, elements: Form, direction: str, place: Place, state: State, kind: Type, *, manual: bool = False
+        self,
+        start: Spot,
+        elements: Form,
+        direction: str,
+        place: Place,
+        state: State,
+        kind: Type,
+        *,
+        manual: bool = False,
     ) -> None:
         """``elements`` consecutive elements of type ``kind``, as the innermost loop of a copy."""
         if self.scouting or not isinstance(start, MemorySpot):
@@ -377,5 +384,3 @@ def _whole(spot: LocalSpot, machine: Evaluator) -> LocalSpot:
 
 def _some(machine: Evaluator) -> Form:
     return symbol_form(data("any element", None, machine.open))
-
-

@@ -106,10 +106,8 @@ class Evaluator(Machine):
             case Binary():
                 return self._binary(expression, state)
             case Assign():
-                spot = self.assign(expression, state)
-                if isinstance(spot, PLACES):
-                    return self._peek(spot, state, expression.place)
-                return spot
+                held = self.assign(expression, state)
+                return self._peek(held, state, expression.place) if isinstance(held, PLACES) else held
             case Select():
                 return self._select(expression, state)
             case Cast():
@@ -158,7 +156,9 @@ class Evaluator(Machine):
         for key, by_reference in expression.captures:
             root = self.root(key)
             cells = state.cells.get(root)
-            if by_reference or isinstance(bare(self.types.get(root, RealType(0, 0))), ArrayType | StreamType | RecordType):
+            if by_reference or isinstance(
+                bare(self.types.get(root, RealType(0, 0))), ArrayType | StreamType | RecordType
+            ):
                 roots[key] = root
             elif cells is not None and () in cells:
                 values[key] = cells[()]
@@ -172,7 +172,9 @@ class Evaluator(Machine):
         spot = self.spot(expression.base, state)
         if isinstance(spot, MemorySpot):
             spot = _bits_of(spot, expression, high, low)
-        whole = self.load(spot, expression.base.place, state) if spot is not None else self.value(expression.base, state)
+        whole = (
+            self.load(spot, expression.base.place, state) if spot is not None else self.value(expression.base, state)
+        )
         if not isinstance(whole, Number):
             return self.lost("bits of something that is no integer", expression.place)
         return Number(bit_range(whole.form, high, low))
@@ -220,7 +222,9 @@ class Evaluator(Machine):
         if op in ("&&", "||"):
             return self._short_circuit(expression, state)
         left, right = self.value(expression.left, state), self.value(expression.right, state)
-        return self.combined(op, left, right, expression.type, expression.left.type, expression.right.type, expression.place)
+        return self.combined(
+            op, left, right, expression.type, expression.left.type, expression.right.type, expression.place
+        )
 
     def combined(
         self, op: str, left: Value, right: Value, kind: Type, left_type: Type, right_type: Type, place: Place
@@ -275,7 +279,11 @@ class Evaluator(Machine):
             a, b = left.path[-1], right.path[-1]
             if isinstance(a, Form) and isinstance(b, Form) and left.path[:-1] == right.path[:-1]:
                 return Number(binary(op, a, b, bare(left_type)))
-        if op in ("==", "!=") and isinstance(left, MemorySpot | LocalSpot) and isinstance(right, MemorySpot | LocalSpot):
+        if (
+            op in ("==", "!=")
+            and isinstance(left, MemorySpot | LocalSpot)
+            and isinstance(right, MemorySpot | LocalSpot)
+        ):
             return Number(ZERO if op == "==" else ONE)
         return Number(depending())
 

@@ -6,8 +6,8 @@ from beatwise.model.form import (
     ONE,
     ZERO,
     Form,
-    bounds,
     both,
+    bounds,
     div,
     either,
     equal,
@@ -128,7 +128,7 @@ def _and(left: Form, right: Form, kind: Type) -> Form:
             return mask(left, bits.bit_length())
         if isinstance(kind, IntType) and not kind.signed:
             inverse = ((1 << kind.bits) - 1) ^ bits
-            if 0 <= inverse and inverse & (inverse + 1) == 0:
+            if inverse >= 0 and inverse & (inverse + 1) == 0:
                 return left - mask(left, inverse.bit_length())
         low = (bits & -bits).bit_length() - 1  # 0b0111000: some bits in the middle
         field = bits >> low

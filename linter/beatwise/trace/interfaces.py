@@ -23,7 +23,9 @@ from beatwise.trace.machine import Argument
 MASTER = "m_axi"
 
 
-def interfaces_of(function: Function, script: Iterable[Directive] = ()) -> tuple[tuple[Interface, ...], dict[str, Argument]]:
+def interfaces_of(
+    function: Function, script: Iterable[Directive] = ()
+) -> tuple[tuple[Interface, ...], dict[str, Argument]]:
     """The ports, in the order of the arguments, and the arguments that reach them."""
     ports: dict[str, list[tuple[Variable, Directive | None]]] = {}
     arguments: dict[str, Argument] = {}

@@ -30,7 +30,7 @@ from beatwise.trace.calls import Caller
 from beatwise.trace.expressions import bare
 from beatwise.trace.machine import Flow
 from beatwise.trace.recurrence import Carry, Solved, Trips, solve, trips_while
-from beatwise.trace.state import ANY, Filled, State, conjunction, replaced
+from beatwise.trace.state import ANY, State, conjunction, replaced
 from beatwise.trace.values import (
     ChoiceSpot,
     LocalSpot,
@@ -38,7 +38,6 @@ from beatwise.trace.values import (
     Number,
     Path,
     Pointer,
-    Record,
     Root,
     Spot,
     Value,
@@ -167,7 +166,7 @@ class Looper(Caller):
         """The cells that the body and the step write; and what the body leaves in them, roughly."""
         twin = state.copy()
         twin.written = set()
-        mark, open_, steps = self.record.mark(), self.open, self.steps
+        mark, open_ = self.record.mark(), self.open
         self.scouting += 1
         self.open = (*self.open, -1)
         if statement.condition is not None:
@@ -221,7 +220,7 @@ class Looper(Caller):
         trips_early: Form | None = None
         if early:
             bound = {m.symbol: form for m, form in early}
-            for m, form in early:
+            for m, _ in early:
                 self._set(entry, m.cell, replaced(m.entering(), bound, {}))
             moving = [m for m in moving if m.symbol not in bound]
             trips_early = self._early_trips(statement, entry, moving, provisional)
@@ -352,9 +351,7 @@ class Looper(Caller):
             found.append((m, m.first() + symbol_form(provisional) * delta))
         return found
 
-    def _early_trips(
-        self, statement: Loop, entry: State, moving: list[Moving], provisional: Symbol
-    ) -> Form | None:
+    def _early_trips(self, statement: Loop, entry: State, moving: list[Moving], provisional: Symbol) -> Form | None:
         """How often the loop runs, when its condition hangs on nothing that the body changes."""
         if statement.condition is None or not statement.test_first:
             return None
@@ -470,7 +467,9 @@ class Looper(Caller):
         data_exit, because = None, None
         for form in unsolved:
             for symbol in form.leaves():
-                if symbol.kind == "data" and (loop_number in symbol.loops or any(n > loop_number for n in symbol.loops)):
+                if symbol.kind == "data" and (
+                    loop_number in symbol.loops or any(n > loop_number for n in symbol.loops)
+                ):
                     data_exit, because = symbol.place or statement.place, symbol.name
         if data_exit is None and trips.count is None:
             for form in unsolved:
@@ -492,9 +491,7 @@ class Looper(Caller):
             trips=None if trips.count is None else substitute(trips.count, swap),
             label=statement.label,
             tripcount=_tripcount(tripcount),
-            recurrences=tuple(
-                Recurrence(c.symbol, substitute(c.first, swap), substitute(c.next, swap)) for c in left
-            ),
+            recurrences=tuple(Recurrence(c.symbol, substitute(c.first, swap), substitute(c.next, swap)) for c in left),
             until=tuple(substitute(form, swap) for form in trips.until),
             exits=tuple(substitute(form, swap) for form in trips.exits),
             data_exit=data_exit,
@@ -539,7 +536,7 @@ class Looper(Caller):
                 else replace(unknown("trips that are not known", statement.place, self.open), low=0, high=top)
             )
             last = symbol_form(symbol)
-        at_last = {counter_symbol: last for counter_symbol in (final, count_from, provisional)}
+        at_last = dict.fromkeys((final, count_from, provisional), last)
         memo_last: dict[Symbol, Form] = {}
         source = end if end is not None else (flow.breaks[0] if flow.breaks else entry)
         result = State({}, state.guards)
@@ -548,11 +545,8 @@ class Looper(Caller):
         for root, cells in swapped.cells.items():
             if root in state.cells or self._outlives(root, state):
                 result.cells[root] = {p: replaced(v, at_last, memo_last) for p, v in cells.items()}
-        for root, filled in swapped.filled.items():
-            result.filled[root] = filled
         if not (statement.test_first or not broken):
             broken = True
-        solved_left = {s for s in values if s.kind == "carried"}
         for m, form in [*((m, None) for m in moving), *early]:
             if m.cell[0] not in state.cells:
                 continue
@@ -568,8 +562,6 @@ class Looper(Caller):
             else:
                 value_here = Number(shown)
             self._set(result, m.cell, value_here)
-        del solved_left
-        self._remember_filled(state, result, source, values, memo, final, trips)
         returns = []
         for left, value in flow.returns:
             gone = left.substituted(values, memo).substituted(at_last, memo_last)
@@ -579,7 +571,9 @@ class Looper(Caller):
                 else g
                 for i, g in enumerate(left.guards)
             )
-            gone.cells = {root: cells for root, cells in gone.cells.items() if root in state.cells or root[0].startswith("what")}
+            gone.cells = {
+                root: cells for root, cells in gone.cells.items() if root in state.cells or root[0].startswith("what")
+            }
             returns.append((gone, replaced(replaced(value, values, memo), at_last, memo_last)))
         return Flow(result, returns=returns)
 
@@ -597,18 +591,6 @@ class Looper(Caller):
                     made = unknown("", statement.place, self.open, symbol.depends)
                 swap[symbol] = symbol_form(replace(made, low=symbol.low, high=symbol.high))
         return substitute(form, swap)
-
-    def _remember_filled(
-        self,
-        before: State,
-        result: State,
-        source: State,
-        values: Mapping[Symbol, Form],
-        memo: dict[Symbol, Form],
-        final: Symbol,
-        trips: Trips,
-    ) -> None:
-        """A local array that this loop alone fills in order, with values that the counter tells."""
 
 
 def _argument(spot: Spot) -> str | Root | None:
@@ -671,5 +653,3 @@ def _tripcount(directive: Directive | None) -> int | None:
     if low is not None and high is not None:
         return (low + high) // 2
     return high if high is not None else low
-
-

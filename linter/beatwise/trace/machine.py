@@ -11,17 +11,16 @@ from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field, replace
 from itertools import count
 
-from beatwise.model.access import Access, Choice, Guard, LoopInstance, Stream, StreamOperation
+from beatwise.model.access import Access, Choice, Guard, LoopInstance, StreamOperation
 from beatwise.model.form import (
     ONE,
     ZERO,
     Form,
     Symbol,
-    bounds,
     data,
+    either,
     equal,
     negation,
-    number,
     symbol_form,
     truth,
     unknown,
@@ -54,7 +53,7 @@ from beatwise.model.types import (
     VectorType,
 )
 from beatwise.trace.record import Recording
-from beatwise.trace.state import State, conjunction, joined
+from beatwise.trace.state import State, joined
 from beatwise.trace.values import (
     NOTHING,
     ChoiceSpot,
@@ -238,7 +237,7 @@ class Machine:
                     if isinstance(arm, LocalSpot):
                         old = state.read(arm, place)
                         branch.write(arm, choose(condition, value, old, place) if old is not None else value)
-                        state.cells, state.filled = branch.cells, branch.filled
+                        state.cells = branch.cells
                     else:
                         self.store(arm, value, place, branch)
                     self._choosing = None
@@ -435,34 +434,30 @@ class Machine:
         return joined(first, second, place)
 
     def _switch(self, statement: Switch, state: State) -> Flow:
+        """The labels are tried in turn, ``default`` last; then the bodies run in order, each falling into the next."""
         flow = Flow(None)
         subject = self.number(statement.subject, state)
         place = statement.subject.place
-        falling: State | None = None
         rest: State | None = state
-        ended: list[State] = []
-        default_at = next((i for i, case in enumerate(statement.cases) if None in case.values), None)
-        misses: State | None = None
+        entering: dict[int, State] = {}
         for at, case in enumerate(statement.cases):
-            entering: State | None = None
-            if rest is not None:
-                if at == default_at:
-                    condition = self._default_condition(subject, statement, rest)
-                else:
-                    condition = ZERO
-                    for value in case.values:
-                        if value is not None:
-                            hit = equal(subject, self.number(value, rest))
-                            condition = _or(condition, hit)
-                if self.scouting or condition.known != 0:
-                    entering = rest.under(condition, place, self.open)
-                if condition.known == 1 and not self.scouting:
-                    rest = None
-                elif at != len(statement.cases) - 1 or default_at is None:
-                    rest = rest.under(negation(condition), place, self.open)
-                else:
-                    rest = None if at == default_at else rest.under(negation(condition), place, self.open)
-            begin = self.join(entering, falling, place)
+            if None in case.values or rest is None:
+                continue
+            hit = ZERO
+            for value in case.values:
+                if value is not None:
+                    hit = either(hit, equal(subject, self.number(value, rest)))
+            if self.scouting or hit.known != 0:
+                entering[at] = rest.under(hit, place, self.open)
+            rest = None if hit.known and not self.scouting else rest.under(negation(hit), place, self.open)
+        default_at = next((at for at, case in enumerate(statement.cases) if None in case.values), None)
+        if default_at is not None and rest is not None:
+            entering[default_at], rest = rest, None
+        falling: State | None = None
+        ended: list[State] = []
+        for at, case in enumerate(statement.cases):
+            begin = self.join(entering.get(at), falling, place)
+            falling = None
             if begin is None:
                 continue
             part = self.run_all(case.body, begin)
@@ -470,24 +465,11 @@ class Machine:
             flow.returns += part.returns
             ended += part.breaks
             falling = part.next
-        if default_at is None or default_at != len(statement.cases) - 1:
-            misses = rest if default_at is None else None
-        meets: State | None = self.join(misses, falling, place) if misses is not None else falling
+        meets = self.join(falling, rest, place)
         for end in reversed(ended):
             meets = self.join(end, meets, place)
         flow.next = meets
         return flow
-
-    def _default_condition(self, subject: Form, statement: Switch, state: State) -> Form:
-        """What is left for ``default``: none of the labels."""
-        condition = ONE
-        from beatwise.model.form import both
-
-        for case in statement.cases:
-            for value in case.values:
-                if value is not None:
-                    condition = both(condition, negation(equal(subject, self.number(value, state))))
-        return condition
 
     # ------------------------------------------------------------------------------- provided by the other parts
 
@@ -521,12 +503,6 @@ class Machine:
         raise NotImplementedError
 
     _names: dict[Root, str]
-
-
-def _or(left: Form, right: Form) -> Form:
-    from beatwise.model.form import either
-
-    return either(left, right)
 
 
 def _leaving(guards: tuple[Guard, ...], since: int) -> tuple[Guard, ...]:

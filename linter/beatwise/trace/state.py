@@ -7,6 +7,7 @@ from collections.abc import Iterator, Mapping
 from beatwise.model.access import Guard
 from beatwise.model.form import ONE, Form, Symbol, both, either, lookup, negation, number, select, substitute
 from beatwise.model.place import Place
+from beatwise.trace.logic import always
 from beatwise.trace.values import (
     ChoiceSpot,
     Closure,
@@ -29,28 +30,18 @@ ANY = "*"  #: in a cell's path: some element, no one knows which
 Cells = Mapping[Path, Value]
 
 
-class Filled:
-    """A local array that one loop fills: element ``index`` (a form in ``counter``) holds ``value``."""
-
-    __slots__ = ("counter", "index", "value")
-
-    def __init__(self, counter: Symbol, index: Form, value: Form) -> None:
-        self.counter, self.index, self.value = counter, index, value
-
-
 class State:
     """Cells by variable; ``guards`` is the condition of being here. Copies share what they do not change."""
 
-    __slots__ = ("cells", "filled", "guards", "written")
+    __slots__ = ("cells", "guards", "written")
 
     def __init__(self, cells: dict[Root, Cells], guards: tuple[Guard, ...]) -> None:
         self.cells, self.guards = cells, guards
-        self.filled: dict[Root, Filled] = {}
         self.written: set[tuple[Root, Path]] | None = None  #: what a scouting run has changed
 
     def copy(self) -> State:
         twin = State(dict(self.cells), self.guards)
-        twin.filled, twin.written = dict(self.filled), self.written
+        twin.written = self.written
         return twin
 
     def under(self, condition: Form, place: Place, loops: tuple[int, ...], *, chooses: bool = False) -> State:
@@ -62,7 +53,7 @@ class State:
 
     def become(self, other: State) -> None:
         """Takes over what the other holds."""
-        self.cells, self.guards, self.filled, self.written = other.cells, other.guards, other.filled, other.written
+        self.cells, self.guards, self.written = other.cells, other.guards, other.written
 
     # ----------------------------------------------------------------------------------------------- reading
 
@@ -84,17 +75,12 @@ class State:
 
     def _read_some(self, spot: LocalSpot, cells: Cells, path: Path, place: Place) -> Value | None:
         """An element whose index is not a plain number."""
-        filled = self.filled.get(spot.root)
-        if filled is not None and len(path) == 1 and isinstance(path[0], Form):
-            value = filled_element(filled, path[0])
-            if value is not None:
-                return Number(value)
         at = next(i for i, step in enumerate(path) if isinstance(step, Form) and step.known is None)
         index = path[at]
         assert isinstance(index, Form)
         found: dict[int, Value] = {}
         hazy = False
-        for key, value in cells.items():
+        for key in cells:
             if len(key) <= at or key[:at] != path[:at]:
                 continue
             step = key[at]
@@ -126,7 +112,7 @@ class State:
             if covers(key, path):
                 if len(key) == len(path) and not isinstance(value, Number):
                     return value
-                pieces += [part for part in forms_in(value)]
+                pieces += forms_in(value)
         if not pieces:
             return None
         indices = [step for step in path if isinstance(step, Form)]
@@ -141,7 +127,6 @@ class State:
         fuzzy = tuple(ANY if isinstance(step, Form) and step.known is None else step for step in path)
         if self.written is not None:
             self.written.add((spot.root, fuzzy))
-        self.filled.pop(spot.root, None)
         if fuzzy != path:
             self._write_some(cells, fuzzy, value)
         else:
@@ -167,7 +152,6 @@ class State:
     def forget(self, root: Root) -> None:
         """The variable begins anew."""
         self.cells.pop(root, None)
-        self.filled.pop(root, None)
 
     def substituted(self, values: Mapping[Symbol, Form], memo: dict[Symbol, Form]) -> State:
         """The state with symbols replaced."""
@@ -175,20 +159,7 @@ class State:
         twin.written = self.written
         for root, cells in self.cells.items():
             twin.cells[root] = {path: replaced(value, values, memo) for path, value in cells.items()}
-        for root, filled in self.filled.items():
-            if filled.counter not in values:
-                twin.filled[root] = Filled(
-                    filled.counter, substitute(filled.index, values, memo), substitute(filled.value, values, memo)
-                )
         return twin
-
-
-def filled_element(filled: Filled, index: Form) -> Form | None:
-    """The element at ``index`` of an array that a loop has filled in steps of one."""
-    step = filled.index.coefficient(filled.counter)
-    if step is None or step.known != 1:
-        return None
-    return substitute(filled.value, {filled.counter: index - filled.index.without(filled.counter)})
 
 
 def covers(wide: Path, narrow: Path) -> bool:
@@ -249,7 +220,12 @@ def replaced_spot(spot: Spot, values: Mapping[Symbol, Form], memo: dict[Symbol, 
     match spot:
         case MemorySpot():
             return MemorySpot(
-                spot.argument, substitute(spot.offset, values, memo), spot.unit_bytes, spot.type, spot.part_bytes, spot.covers
+                spot.argument,
+                substitute(spot.offset, values, memo),
+                spot.unit_bytes,
+                spot.type,
+                spot.part_bytes,
+                spot.covers,
             )
         case LocalSpot():
             path = tuple(substitute(step, values, memo) if isinstance(step, Form) else step for step in spot.path)
@@ -281,13 +257,13 @@ def joined(first: State | None, second: State | None, place: Place) -> State | N
         reached = select(condition, rest_first, rest_second)
         if other != negation(condition):
             reached = either(both(condition, rest_first), both(other, rest_second))
-        if reached.known is None:
+        if not always(reached):
             parting = first.guards[split]
-            left = any(guard.leaves for guard in (*first.guards[split:], *second.guards[split:]))
-            guards = (*guards, Guard(reached, parting.place, parting.loops, left))
+            leaves = any(guard.leaves for guard in (*first.guards[split:], *second.guards[split:]))
+            guards = (*guards, Guard(reached, parting.place, parting.loops, leaves))
     result = State({}, guards)
     result.written = first.written
-    for root in first.cells.keys() | second.cells.keys():
+    for root in [*first.cells, *(root for root in second.cells if root not in first.cells)]:
         a, b = first.cells.get(root), second.cells.get(root)
         if a is b and a is not None:
             result.cells[root] = a
@@ -300,9 +276,6 @@ def joined(first: State | None, second: State | None, place: Place) -> State | N
                 right = b.get(path, a.get(path) if path not in b and _summary(path) else None)
                 cells[path] = choose(condition, left, right, place)
             result.cells[root] = cells
-    for root, filled in first.filled.items():
-        if second.filled.get(root) is filled:
-            result.filled[root] = filled
     return result
 
 

@@ -57,7 +57,11 @@ def exclusive(first: Access, second: Access) -> tuple[Guard, Guard] | None:
         for b in second.guards:
             if a is b or not (a.by_data and b.by_data):
                 continue
-            if a.condition == negation(b.condition) or b.condition == negation(a.condition) or _differ(a.condition, b.condition):
+            if (
+                a.condition == negation(b.condition)
+                or b.condition == negation(a.condition)
+                or _differ(a.condition, b.condition)
+            ):
                 return a, b
     return None
 

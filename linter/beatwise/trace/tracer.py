@@ -113,7 +113,11 @@ def _trace(program: Program, top: Function, given: Mapping[str, int]) -> Trace:
             machine.run(top.body, state)
     except OutOfSteps:
         problems.append(
-            Problem(top.place.file, top.place.line, f"{top.name}: not followed to its end ({STEPS_AT_MOST} steps were taken)")
+            Problem(
+                top.place.file,
+                top.place.line,
+                f"{top.name}: not followed to its end ({STEPS_AT_MOST} steps were taken)",
+            )
         )
     except RecursionError:
         problems.append(Problem(top.place.file, top.place.line, f"{top.name}: nested too deeply to be followed"))
@@ -172,5 +176,3 @@ def _scalar(
     symbol = parameter(name, low, high, variable.place)
     parameters[name] = symbol
     return Number(symbol_form(symbol))
-
-

@@ -196,7 +196,12 @@ def choose_spot(condition: Form, yes: Spot, no: Spot, place: Place) -> Spot:
         same = replace(yes, offset=ZERO) == replace(no, offset=ZERO)
         if same:
             return replace(yes, offset=select(condition, yes.offset, no.offset))
-    if isinstance(yes, LocalSpot) and isinstance(no, LocalSpot) and yes.root == no.root and len(yes.path) == len(no.path):
+    if (
+        isinstance(yes, LocalSpot)
+        and isinstance(no, LocalSpot)
+        and yes.root == no.root
+        and len(yes.path) == len(no.path)
+    ):
         path = tuple(
             a if a == b else select(condition, a, b) if isinstance(a, Form) and isinstance(b, Form) else None
             for a, b in zip(yes.path, no.path, strict=True)

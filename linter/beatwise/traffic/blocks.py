@@ -56,7 +56,7 @@ def blocked(index: int, walk: Walk, beside: Neighbours) -> tuple[Block, ...]:
     if loop is not None:
         if any(_decides(guard, access, loop) for guard in beside.guards[index]):
             found.append("data-dependent-guard")
-        if _ends_by_data(loop, access.loops):
+        if loop.data_exit is not None:
             found.append("data-dependent-exit")
         if _is_interleaved(index, beside):
             found.append("interleaved")
@@ -75,16 +75,9 @@ def _decides(guard: Guard, access: Access, loop: LoopInstance) -> bool:
     """Whether data decides anew in each iteration. The condition of a choice, and of an exit, is told as such."""
     if access.choice is not None and guard.place == access.choice.place:
         return False
-    if guard.leaves and _ends_by_data(loop, access.loops):
+    if guard.leaves and loop.data_exit is not None:
         return False
     return drawn_in(guard.condition, loop, access.loops)
-
-
-def _ends_by_data(loop: LoopInstance, loops: Sequence[LoopInstance]) -> bool:
-    """Whether data read in the loop ends it; not so where the trips are known when it starts."""
-    if loop.data_exit is None:
-        return False
-    return loop.trips is None or any(drawn_in(leave, loop, loops) for leave in loop.exits)
 
 
 def _is_interleaved(index: int, beside: Neighbours) -> bool:

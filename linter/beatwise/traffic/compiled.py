@@ -83,4 +83,4 @@ def _compile(form: Form) -> Compiled:
     exec(compile(source, "<form>", "exec"), space)
     run = space["run"]
     assert callable(run)
-    return run  # type: ignore[no-any-return]
+    return run

@@ -74,18 +74,18 @@ def _walks(
     """How each access walks, together with those that it makes one run with."""
     walks = []
     for index, (access, seat) in enumerate(zip(accesses, places, strict=True)):
-        walk = runs.walk(access, given)
-        if guards[index] != access.guards:
-            walk = runs.walk(replace(access, guards=guards[index]), given)
-            walk = replace(walk, executions=walk.executions and walk.executions / seat.alike)
+        walk = runs.walk(replace(access, guards=guards[index]), given)
+        if guards[index] != access.guards and walk.executions is not None:
+            walk = replace(walk, executions=walk.executions / seat.alike)
         if seat.elements > 1:
             size = access.element_bytes * seat.elements
             whole = replace(accesses[seat.head], guards=guards[index], element_bytes=size, part_bytes=size)
             together = runs.walk(whole, given)
             if together.pattern == "sequential" and together.run_elements is not None:
                 run = together.run_elements * seat.elements
-                stride = access.element_bytes
-                walk = replace(together, stride_bytes=stride, run_elements=run, executions=walk.executions)
+                walk = replace(
+                    together, stride_bytes=access.element_bytes, run_elements=run, executions=walk.executions
+                )
         walks.append(walk)
     return tuple(walks)
 

@@ -1,7 +1,8 @@
 """Walks through a loop nest number by number, for the accesses that no formula covers.
 
-Loops run as the source says: counters, carried variables, exits, guards. What only the data knows is drawn at random, the
-same draw for the same iteration. The walk stops after ``STEPS_AT_MOST`` iterations; what it has seen by then stands for all.
+Loops run as the source says: counters, carried variables, exits, guards. What only the data knows is drawn at random,
+the same draw for the same iteration. The walk stops after ``STEPS_AT_MOST`` iterations; what it has seen by then stands for
+all.
 """
 
 from __future__ import annotations
@@ -254,9 +255,9 @@ def _drawn_in(access: Access) -> dict[int, set[Symbol]]:
     for form in forms:
         for symbol in form.leaves():
             if symbol.kind in ("data", "unknown"):
-                for loop in redrawn_in(symbol).intersection(numbers):
-                    found.setdefault(loop, set()).add(symbol)
-    for at, loop in enumerate(numbers):  # an outer iteration draws the inner data anew, too
+                for number in redrawn_in(symbol).intersection(numbers):
+                    found.setdefault(number, set()).add(symbol)
+    for at, number in enumerate(numbers):  # an outer iteration draws the inner data anew, too
         for inner in numbers[at + 1 :]:
-            found.setdefault(loop, set()).update(found.get(inner, ()))
+            found.setdefault(number, set()).update(found.get(inner, ()))
     return found

@@ -6,7 +6,7 @@ nest (``replay``). Sizes that nobody knows are taken as ``ASSUMED_TRIPS``, and t
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from math import gcd
 
@@ -87,7 +87,7 @@ def _trips(loop: LoopInstance, sizes: Mapping[Symbol, int]) -> Trips:
         return Trips(ASSUMED_TRIPS, None, "assumed", loop)
     leaves = form.leaves()
     if any(symbol.kind in ("data", "unknown", "carried") for symbol in leaves):
-        low, high = bounds(form)
+        high = bounds(form)[1]
         if loop.tripcount is not None:
             return Trips(loop.tripcount, form, "tripcount", loop)
         return Trips(
@@ -107,9 +107,9 @@ def _trips(loop: LoopInstance, sizes: Mapping[Symbol, int]) -> Trips:
     return Trips(max(0, count), form, "given" if given else "constant", loop)
 
 
-def _worst(bases: Sequence[Basis] | object) -> Basis:
+def _worst(bases: Iterable[Basis]) -> Basis:
     worst: Basis = "constant"
-    for basis in bases:  # type: ignore[attr-defined]
+    for basis in bases:
         if _GRAVITY.index(basis) > _GRAVITY.index(worst):
             worst = basis
     return worst
@@ -192,7 +192,11 @@ def _boxed(
         value = compiled(stride)(dict(sizes)) if not _drawn(stride) else None
         if pattern == "single":
             pattern, step = _pattern(stride, value, access.element_bytes, t)
-        joins = whole and not (copied and t is not trips[-1]) and _joins(stride, value, run_form, run * access.element_bytes, run_basis)
+        joins = (
+            whole
+            and not (copied and t is not trips[-1])
+            and _joins(stride, value, run_form, run * access.element_bytes, run_basis)
+        )
         if joins:
             run *= t.count
             run_basis.append(t.basis)

@@ -26,18 +26,18 @@ typedef double double_t;
 #define FP_ZERO 2
 #define FP_SUBNORMAL 3
 #define FP_NORMAL 4
-template <class _BwT> using _BwIntegerOnly = _BwEnable<__is_integral(_BwT), double>;
+template <class _BwT> using _BwIntegerOnly = _BwEnable<__is_integral(_BwT) || _BwIsOpen<_BwT>::value, double>;
+template <class _BwT> struct _BwTakesReal { static constexpr bool value = __is_arithmetic(_BwT) || _BwIsOpen<_BwT>::value; };
 template <class _BwA, class _BwB> using _BwReal =
-    _BwEnable<__is_arithmetic(_BwA) && __is_arithmetic(_BwB) && !__is_same(_BwA, _BwB), _BwCommon<_BwCommon<_BwA, _BwB>, double>>;
-template <class _BwA> using _BwBothIntegers = _BwEnable<__is_integral(_BwA), double>;
+    _BwEnable<_BwTakesReal<_BwA>::value && _BwTakesReal<_BwB>::value && !__is_same(_BwA, _BwB), double>;
 #define _BwOne(_BwName) \
   float _BwName(float); double _BwName(double); long double _BwName(long double); \
   template <class _BwT> _BwIntegerOnly<_BwT> _BwName(_BwT);
 #define _BwTwo(_BwName) \
   float _BwName(float, float); double _BwName(double, double); long double _BwName(long double, long double); \
   template <class _BwA, class _BwB> _BwReal<_BwA, _BwB> _BwName(_BwA, _BwB); \
-  template <class _BwA> _BwBothIntegers<_BwA> _BwName(_BwA, _BwA);
-#define _BwTest(_BwName) template <class _BwT> _BwEnable<__is_arithmetic(_BwT), bool> _BwName(_BwT);
+  template <class _BwA> _BwIntegerOnly<_BwA> _BwName(_BwA, _BwA);
+#define _BwTest(_BwName) template <class _BwT> _BwEnable<_BwTakesReal<_BwT>::value, bool> _BwName(_BwT);
 _BwOne(sqrt)
 _BwOne(cbrt)
 _BwOne(exp)

@@ -1,4 +1,5 @@
 #pragma once
+#include <_bw/traits.h>
 #include <stddef.h>
 #define EXIT_SUCCESS 0
 #define EXIT_FAILURE 1
@@ -49,6 +50,7 @@ long long abs(long long _BwX);
 float abs(float _BwX);
 double abs(double _BwX);
 long double abs(long double _BwX);
+template <class _BwT> _BwEnable<_BwIsOpen<_BwT>::value, _BwT> abs(const _BwT &);
 long labs(long _BwX);
 long long llabs(long long _BwX);
 div_t div(int _BwA, int _BwB);

@@ -9,8 +9,6 @@
 #endif
 #include <_bw/traits.h>
 namespace _BwInvented {
-template <class _BwT, class = void> struct _BwIsOpen { static constexpr bool value = false; };
-template <class _BwT> struct _BwIsOpen<_BwT, typename _BwT::_BwOpen> { static constexpr bool value = true; };
 template <class _BwT, class = void> struct _BwIsAny { static constexpr bool value = false; };
 template <class _BwT> struct _BwIsAny<_BwT, typename _BwT::_BwSwallows> { static constexpr bool value = true; };
 struct _BwAny;
@@ -60,6 +58,7 @@ template <class _BwA, class _BwB, class = _BwEither, class = _BwEnable<!__is_cla
   template <class... _BwArguments> constexpr _BwName(_BwArguments &&...) {}  \
   _BwName &operator=(const _BwName &) = default;                             \
   template <class _BwFrom> _BwName &operator=(const _BwFrom &);              \
+  template <class _BwFrom> void operator=(const _BwFrom &) volatile;         \
   _BwName *operator->() const;                                               \
   _BwName &operator*() const;
 }

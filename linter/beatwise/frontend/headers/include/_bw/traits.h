@@ -18,3 +18,7 @@ template <class _BwT> struct _BwIsNumber {
 };
 // The type of arithmetic between two built-in numbers.
 template <class _BwA, class _BwB> using _BwCommon = decltype(true ? _BwValue<_BwA>() : _BwValue<_BwB>());
+
+// A class that a number can be had from: arbitrary precision, or a stand-in.
+template <class _BwT, class = void> struct _BwIsOpen { static constexpr bool value = false; };
+template <class _BwT> struct _BwIsOpen<_BwT, typename _BwT::_BwOpen> { static constexpr bool value = true; };
