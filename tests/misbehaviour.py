@@ -7,7 +7,7 @@ import os
 import time
 
 
-def work(item: int | str) -> int:
+def work(item: object) -> int:
     """What the workers are given: an item that is a number is squared, a word is misbehaviour."""
     if item == "crash":
         ctypes.string_at(0)

@@ -30,6 +30,7 @@ from beatwise_rules import (
     volatile_access,
 )
 from beatwise_rules.levels import DEFAULTS, Thresholds, accesses_of, weighed
+from beatwise_rules.sites import goes_on
 
 Setting = Level | Literal["off"]
 
@@ -141,7 +142,7 @@ def _site(finding: Finding) -> Site:
 
 def _is_told_elsewhere(first: Finding, facts: Facts) -> bool:
     """Whether a graver cause, told at another access, holds the site's accesses too."""
-    here, order = accesses_of(first, facts), rule_names()
+    here, order = list(filter(goes_on, accesses_of(first, facts))), rule_names()
     causes = {TOLD_ELSEWHERE[block] for traffic in here for block in traffic.blocked if block in TOLD_ELSEWHERE}
     if any(data_dependent_destination.is_steered(traffic) for traffic in here):
         causes.add("data-dependent-destination")

@@ -42,16 +42,19 @@ from beatwise.model.finding import Facts, Finding
 from beatwise.model.traffic import Traffic
 from beatwise_rules.advice import elements_a_beat
 from beatwise_rules.evidence import port_of, trouble
-from beatwise_rules.sites import is_tiny, sites
+from beatwise_rules.levels import share_of_bytes
+from beatwise_rules.sites import never_jumps, sites
 from beatwise_rules.wording import PASSIVE, count, gbps, quoted, size
 
 NARROW_BITS = 128  #: an element that is wider is left in peace
+SMALL_BYTES = 4096  #: a table that is smaller and read once is left in peace (our own choice: one page of addresses)
+SMALL_SHARE = 0.25  #: provided that it is less than this of what the kernel moves (our own choice)
 CURES: frozenset[str] = frozenset()
 
 
 def find(facts: Facts) -> Iterator[Finding]:
     """One finding for each place and argument that is walked in order through a narrow port."""
-    for site in sites(facts, is_narrow):
+    for site in sites(facts, lambda traffic: is_narrow(traffic) and not _is_small_table(facts, traffic)):
         worst, access = site[0], site[0].access
         beat_bytes = worst.width_bits // 8
         name = quoted(access.argument)
@@ -79,7 +82,15 @@ def is_narrow(traffic: Traffic) -> bool:
         return False
     wide = NARROW_BITS // 8
     widens_unblocked = traffic.blocked and walk.run_multiple % wide == 0 and walk.start_multiple % wide == 0
-    return not widens_unblocked and not is_tiny(traffic)
+    return not widens_unblocked
+
+
+def _is_small_table(facts: Facts, traffic: Traffic) -> bool:
+    """Whether it is a table that is read once beside much greater traffic."""
+    if traffic.bytes_moved is None or traffic.bytes_moved >= SMALL_BYTES or not never_jumps(traffic):
+        return False
+    share = share_of_bytes(facts, [traffic])
+    return share is None or share < SMALL_SHARE
 
 
 def _why_not(facts: Facts, traffic: Traffic) -> str:

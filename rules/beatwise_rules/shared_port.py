@@ -46,7 +46,7 @@ from beatwise.model.access import Interface
 from beatwise.model.finding import Facts, Finding
 from beatwise.model.traffic import Traffic
 from beatwise_rules.levels import weighed
-from beatwise_rules.sites import working_loop
+from beatwise_rules.sites import goes_on, working_loop
 from beatwise_rules.wording import gbps, lines, listed, quoted
 
 CURES: frozenset[str] = frozenset()
@@ -55,14 +55,10 @@ CURES: frozenset[str] = frozenset()
 def find(facts: Facts) -> Iterator[Finding]:
     """One finding for each port with arguments that are used at the same time."""
     for port in facts.trace.interfaces:
-        mine = [traffic for traffic in facts.traffic if traffic.access.interface == port.name and _counts(traffic)]
+        mine = [traffic for traffic in facts.traffic if traffic.access.interface == port.name and goes_on(traffic)]
         companies = list(_companies(mine))
         if companies:
             yield _told(facts, port, companies)
-
-
-def _counts(traffic: Traffic) -> bool:
-    return bool(traffic.access.loops) and traffic.walk.pattern not in ("single", "unresolved")
 
 
 def _companies(mine: Sequence[Traffic]) -> Iterator[list[Traffic]]:

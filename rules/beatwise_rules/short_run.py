@@ -46,7 +46,7 @@ from beatwise.model.finding import Facts, Finding
 from beatwise.model.traffic import Traffic
 from beatwise_rules.advice import SHORT_BEATS, TILE_BYTES, a_buffer, burst_elements
 from beatwise_rules.evidence import trouble
-from beatwise_rules.sites import is_tiny, moving_loop, sites
+from beatwise_rules.sites import moving_loop, never_jumps, sites
 from beatwise_rules.wording import PASSIVE, count, quoted, sentence, size, the_loop
 
 CURES: frozenset[str] = frozenset()
@@ -65,7 +65,7 @@ def is_short(traffic: Traffic) -> bool:
     if walk.pattern not in ("sequential", "irregular") or walk.run_elements is None or broken_by_data:
         return False
     run_bits = walk.run_elements * traffic.access.element_bytes * 8
-    return run_bits < SHORT_BEATS * traffic.width_bits and not is_tiny(traffic)
+    return run_bits < SHORT_BEATS * traffic.width_bits and not never_jumps(traffic)
 
 
 def _told(facts: Facts, site: list[Traffic]) -> Finding:

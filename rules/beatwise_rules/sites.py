@@ -9,10 +9,6 @@ from beatwise.model.finding import Facts
 from beatwise.model.form import Form, Symbol, bounds
 from beatwise.model.traffic import Block, Traffic
 
-TINY_BYTES = (
-    4096  #: an argument read once that is no larger than this is left in peace (our own choice: one page of addresses)
-)
-
 PLAUSIBLE_BYTES = 1 << 30  #: what a 32-bit index could reach says nothing about the size of an array
 
 
@@ -23,11 +19,16 @@ def sites(facts: Facts, holds: Callable[[Traffic], bool]) -> Iterator[list[Traff
     """
     groups: dict[tuple[str, int, str], list[Traffic]] = {}
     for traffic in facts.traffic:
-        if traffic.walk.pattern != "single" and traffic.access.loops and holds(traffic):
+        if goes_on(traffic) and holds(traffic):
             place = traffic.access.place
             groups.setdefault((place.file, place.offset, traffic.access.argument), []).append(traffic)
     for group in groups.values():
         yield sorted(group, key=lambda traffic: -traffic.loss_gbps)
+
+
+def goes_on(traffic: Traffic) -> bool:
+    """Whether the access runs more than once, in a loop; one that does not is never worth a word."""
+    return bool(traffic.access.loops) and traffic.walk.pattern != "single"
 
 
 def blocked_by(block: Block) -> Callable[[Traffic], bool]:
@@ -70,17 +71,11 @@ def named_data(symbols: Iterable[Symbol]) -> list[str]:
     return list(dict.fromkeys(symbol.name for symbol in symbols if symbol.name.strip("?~ ")))
 
 
-def is_tiny(traffic: Traffic) -> bool:
-    """Whether the access walks once, in order, over less than a page: a constant table, a header."""
+def never_jumps(traffic: Traffic) -> bool:
+    """Whether the access walks over its argument once, in order, from end to end."""
     walk = traffic.walk
-    return (
-        traffic.bytes_moved is not None
-        and traffic.bytes_moved < TINY_BYTES
-        and walk.pattern == "sequential"
-        and not traffic.blocked
-        and walk.executions is not None
-        and (walk.run_elements or 0) >= walk.executions
-    )
+    once = walk.executions is not None and (walk.run_elements or 0) >= walk.executions
+    return once and walk.pattern == "sequential" and not traffic.blocked
 
 
 def argument_bytes(access: Access) -> int | None:

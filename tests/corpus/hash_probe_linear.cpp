@@ -6,7 +6,7 @@ extern "C" void probe(int n, const unsigned *keys, const unsigned *table, int *w
 #pragma HLS INTERFACE m_axi port=where bundle=g2
     for (int i = 0; i < n; i++) {
         unsigned slot = (keys[i] * 40503u) % 1024u;  //! read keys sequential run=100
-        while (table[slot] != 0 && slot < 1087) slot++;  //! read table sequential/indirect run=data
+        while (table[slot] != 0 && slot < 1087) slot++;  //! read table sequential/indirect run=data tells=early-exit tells=early-exit
         where[i] = slot;  //! write where sequential run=100
     }
 }

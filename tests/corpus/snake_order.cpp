@@ -6,8 +6,8 @@ extern "C" void snake(const int *in, int *out) {
     int k = 0;
     for (int r = 0; r < 32; r++) {
         if (r % 2 == 0)
-            for (int c = 0; c < 32; c++) out[k++] = in[r * 32 + c];  //! read in sequential run=32 //! write out sequential joined run=1024
+            for (int c = 0; c < 32; c++) out[k++] = in[r * 32 + c];  //! read in sequential run=32 //! write out sequential run=32
         else
-            for (int c = 31; c >= 0; c--) out[k++] = in[r * 32 + c];  //! read in descending //! write out sequential joined run=1024
+            for (int c = 31; c >= 0; c--) out[k++] = in[r * 32 + c];  //! read in descending //! write out sequential run=32
     }
 }

@@ -148,3 +148,18 @@ def test_directives_of_a_lambda_or_a_local_class_are_its_own() -> None:
         "operator()(i: i32) -> void @inline()",
         "go(p: *i32) -> void @inline(off)",
     ]
+
+
+def test_an_interface_that_the_preprocessor_leaves_out_makes_no_top() -> None:
+    text = """
+        void first(int *a) {
+        #if 0
+        #pragma HLS interface m_axi port=a
+        #endif
+          a[0] = 1;
+        }
+        extern "C" void second(int *a) { a[0] = 2; }
+    """
+    assert [line.split("(")[0] for line in shown(text).splitlines() if line.startswith("top")] == [
+        "top extern-c second"
+    ]

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import pytest
 
+from beatwise.model.kernel import Items, Literal
 from helpers.lowered import body, lines, program, shown, statements
 
 INTEGERS = "#include <ap_int.h>\n"
@@ -202,3 +203,58 @@ def test_structured_bindings_stand_for_the_parts() -> None:
 def test_what_is_not_understood_is_opaque_and_keeps_its_parts() -> None:
     assert statements("int *p = new int[a[0]]; delete p;").startswith("let p: *i32 = opaque<")
     assert "a[0]" in statements("int *p = new int[a[0]];")
+
+
+def test_a_reinterpreted_reference_is_what_its_address_points_to() -> None:
+    assert statements("reinterpret_cast<float &>(a[9]) = 2;") == "*<*r32>&a[9] = 2.0"
+
+
+def test_members_of_anonymous_records_are_members_of_the_record_around() -> None:
+    text = """
+        struct cell { int tag; union { int whole; float real; }; struct { short low, high; }; };
+        extern "C" void echo(cell *c) { c[1].real = 2; c->high = 3; }
+    """
+    (echo,) = program(text).functions.values()
+    cell = echo.parameters[0].type.to  # type: ignore[union-attr]
+    assert [(one.name, one.offset) for one in cell.fields] == [  # type: ignore[union-attr]
+        ("tag", 0),
+        ("whole", 4),
+        ("real", 4),
+        ("low", 8),
+        ("high", 10),
+    ]
+    assert body(text) == "c[1].real = 2.0\n*c.high = 3"
+
+
+def test_records_keep_their_padding_unless_they_are_packed() -> None:
+    text = """
+        #include <ap_int.h>
+        struct loose { char tag; ap_uint<24> gate; double level; };
+        struct tight { char tag; ap_uint<24> gate; double level; } __attribute__((packed));
+        struct node { node *next; int value; };
+        extern "C" void echo(loose *a, tight *b, node *c) { a[0].tag = b[0].tag = c->next->value; }
+    """
+    (echo,) = program(text).functions.values()
+    assert [one.type.to.bytes for one in echo.parameters] == [16, 13, 16]  # type: ignore[union-attr]
+
+
+def test_a_statement_expression_comes_before_its_statement() -> None:
+    before = "#define LEAST(x, y) ({ typeof(x) x_ = (x); typeof(y) y_ = (y); x_ < y_ ? x_ : y_; })"
+    assert statements("a[0] = LEAST(b[0], b[1]);", before=before) == lines("""
+        let x_: i32 = b[0]
+        let y_: i32 = b[1]
+        a[0] = ((x_ < y_) ? x_ : y_)""")
+
+
+def test_long_tables_keep_every_value() -> None:
+    values = [(7 * index) % 256 - 128 for index in range(1000)]
+    listed = ", ".join(map(str, values))
+    text = f"static const signed char t[1000] = {{{listed},}};\nint echo(int *a) {{ return t[a[0]]; }}"
+    (table,) = program(text).globals.values()
+    assert isinstance(table.initial, Items)
+    assert [one.value for one in table.initial.items if isinstance(one, Literal)] == values
+
+
+def test_defaults_are_filled_in_where_the_function_has_a_body() -> None:
+    before = "int pick(int *p, int at = 3, int by = 2 * 2) { return p[at] + by; }"
+    assert statements("a[0] = pick(b) + pick(b, n);", before=before) == "a[0] = (pick(b, 3, 4) + pick(b, n, 4))"

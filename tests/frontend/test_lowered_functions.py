@@ -228,3 +228,42 @@ def test_an_expression_as_deep_as_a_generator_makes_it_is_read() -> None:
     read = program(f'extern "C" void echo(int *a) {{ a[1] = {deep}; }}')
     echo = function_named(read, "echo")
     assert sum(isinstance(one, Index) for one in nodes(echo.body)) == 2001
+
+
+def test_this_in_a_lambda_is_the_object_of_the_method_around_it() -> None:
+    text = """
+        struct unit {
+          int *mem;
+          void run(int n) { auto put = [this](int i) { mem[i] = 0; }; put(n); }
+        };
+        extern "C" void echo(int *a) { unit u{a}; u.run(3); }
+    """
+    assert shown(text) == lines("""
+        top extern-c echo(a: *i32) -> void
+          let u: unit = {a}
+          u.run(3)
+        run(n: i32) -> void
+          let put: callable = function operator()[&this]
+          put!(n)
+        operator()(i: i32) -> void
+          *this.mem[i] = 0""")
+
+
+def test_packs_are_expanded() -> None:
+    text = """
+        template <typename... F> void all(int *p, F... f) { (f(p), ...); }
+        template <int... I> void put(int *p) { ((p[I] = sizeof...(I)), ...); }
+        void clear(int *p) { p[0] = 0; }
+        extern "C" void echo(int *a) { all(a, clear, [](int *p) { p[1] = 1; }); put<4, 6>(a); }
+    """
+    assert (
+        shown(text).splitlines()[:6]
+        == lines("""
+        top extern-c echo(a: *i32) -> void
+          all(a, function clear, function operator())
+          put(a)
+        all(p: *i32, f: callable, f: callable) -> void
+          f!(p) , f!(p)
+        clear(p: *i32) -> void""").splitlines()
+    )
+    assert "(p[4] = 2) , (p[6] = 2)" in shown(text)

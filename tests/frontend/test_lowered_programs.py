@@ -152,3 +152,46 @@ def test_two_thousand_lines_take_less_than_a_second_or_two() -> None:
     read = program(text)
     assert len(read.functions) == 151
     assert time.perf_counter() - start < 5  # about 0.3 s on an idle machine; the bound is for loaded ones
+
+
+def test_a_copy_of_a_header_that_we_declare_ourselves_is_passed_over() -> None:
+    files = {"echo.cpp": '#include "ap_int.h"\nextern "C" void echo(ap_uint<24> *a) { a[0] = a[1]; }'}
+    read = read_program(files, includes={"ap_int.h": "template <int W> struct ap_uint { char bytes[99]; };"})
+    assert show(read) == "top extern-c echo(a: *u24) -> void\n  a[0] = a[1]"
+
+
+def test_an_external_variable_told_within_a_function_is_the_global() -> None:
+    text = 'extern "C" void echo(int *a) { extern int pitch; a[pitch] = 0; }\nint pitch = 7;'
+    assert shown(text) == lines("""
+        global pitch: i32 = 7
+        top extern-c echo(a: *i32) -> void
+          a[pitch] = 0""")
+
+
+def test_what_an_error_made_vanish_is_told_with_its_place() -> None:
+    text = """
+        struct gate { int range; };
+        extern "C" void echo(int *a, gate *g) {
+          a[0] = 1;
+          a[1] = g->nothing_like_it(3) = ;
+          a[2] = 3;
+        }
+    """
+    read = shown(text)
+    assert "lost at echo.cpp:4:" in read
+    assert "a[0] = 1" in read and "a[2] = 3" in read
+
+
+def test_a_template_parameter_of_a_class_is_known_in_its_methods() -> None:
+    text = """
+        template <int N> struct lane {
+          void go(int *a) {
+            for (int i = 0; i < N; i++) {
+        #pragma HLS unroll factor=N/2
+              a[i] = 0;
+            }
+          }
+        };
+        extern "C" void echo(int *a) { lane<8> one; one.go(a); }
+    """
+    assert "  loop i < 8 step i++ @unroll(factor=4)" in shown(text)

@@ -32,7 +32,7 @@ FLAGS = (
     *("-no-pie", "-w", f"-I{HERE / 'runtime'}", f"-I{HERE / 'headers'}"),
 )
 WRAPPED = "-Wl,--wrap=memcpy,--wrap=memset,--wrap=memmove"
-RUN_SECONDS = 20
+LIMIT_SECONDS = 60  #: for a compiler or a kernel to end
 EVENT = struct.Struct("=IIIHHQQ")  # struct Event of runtime/hooks.cpp
 
 Direction = Literal["read", "write"]
@@ -212,7 +212,7 @@ def own_files() -> list[Path]:
 
 def run(command: Sequence[str]) -> str:
     try:
-        done = subprocess.run(command, capture_output=True, text=True, timeout=6 * RUN_SECONDS, check=False)
+        done = subprocess.run(command, capture_output=True, text=True, timeout=LIMIT_SECONDS, check=False)
     except (OSError, subprocess.TimeoutExpired) as error:
         raise OracleError(str(error)) from error
     if done.returncode != 0:

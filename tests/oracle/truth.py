@@ -15,12 +15,12 @@ On the line of an access stands what is true of it, one ``//!`` per kind of acce
 
     sum += a[i * pitch];  //! read a strided stride=256 tells=strided-access
 
-Two patterns, as in ``sequential/indirect``, are both true: runs whose starts come from data.
-``run=`` is in elements; ``run=data`` says that only the data of the day decide it, ``run=unknown`` that something
-not given to the analysed program does. It may be left out for patterns
-whose run is 1 and for ``steered``, ``indirect``, ``irregular`` and ``unresolved``. ``joined`` measures all sites of the
-kernel on this argument and direction that are marked so as one sequence; ``joined=NAME`` those of that name. ``guarded``, ``basis=`` and ``tells=`` cannot
-be seen in addresses; they are for the comparison with the analysed program.
+Two patterns, as in ``sequential/indirect``, are both true: runs whose starts come from data. ``run=`` is in elements;
+``run=data`` says that only the data of the day decide it, ``run=unknown`` that something not given to the analysed
+program does. It may be left out for patterns whose run is 1 and for ``steered``, ``indirect``, ``irregular`` and
+``unresolved``. ``joined`` measures all sites of the kernel on this argument and direction that are marked so as one
+sequence; ``joined=NAME`` those of that name. ``guarded``, ``basis=`` and ``tells=`` cannot be seen in addresses; they
+are for the comparison with the analysed program.
 """
 
 from __future__ import annotations

@@ -8,7 +8,6 @@ from typing import Any, get_args
 
 import jsonschema
 import pytest
-from hand_made import access, finding, place, scatter, survey
 
 import beatwise.report
 from beatwise.model.access import Direction
@@ -17,6 +16,7 @@ from beatwise.model.kernel import Problem
 from beatwise.model.traffic import Basis, Block, Limit, Pattern
 from beatwise.report.json import as_json, document, rounded
 from beatwise.report.sheet import merged
+from report.hand_made import access, finding, place, scatter, survey
 
 SCHEMA: dict[str, Any] = json.loads(
     (Path(beatwise.report.__file__).parent / "audit.schema.json").read_text(encoding="utf-8")

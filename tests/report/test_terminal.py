@@ -5,12 +5,12 @@ from __future__ import annotations
 import io
 
 import pytest
-from hand_made import FILE, access, finding, place, scatter, survey
 
 from beatwise.model.kernel import Problem
 from beatwise.model.traffic import PortTraffic
 from beatwise.report.sheet import dearest_first
 from beatwise.report.terminal import audit_text, capable, problem_line, sift_text
+from report.hand_made import FILE, access, finding, place, scatter, survey
 
 AUDIT_80 = """\
 ━━ sector_scatter ━━━━━━━━━━━━━━━━━━━━━━━━━━━━━━━━ kernels/sector_scatter.cpp:20

@@ -204,10 +204,9 @@ def test_a_computed_order_is_a_short_run() -> None:
     assert finding.message == "`in` is read in a computed order whose addresses jump after 1.5 elements."
 
 
-@pytest.mark.parametrize("rule", ["short-run", "narrow-port"])
-def test_a_small_table_that_is_read_once_is_left_in_peace(rule: str) -> None:
-    assert found(rule, Kernel().access("taps", 12, [I], run=8, executions=8, multiple=4)) == []
-    assert found(rule, Kernel().access("taps", 12, [RAY, I], run=8, executions=2880, multiple=4))
+def test_a_short_walk_that_never_jumps_is_left_in_peace() -> None:
+    assert found("short-run", Kernel().access("taps", 12, [I], run=8, executions=8)) == []
+    assert found("short-run", Kernel().access("taps", 12, [RAY, I], run=8, executions=2880))
 
 
 # -------------------------------------------------------------------------------------------------- parts of records
@@ -324,6 +323,12 @@ def test_a_narrow_port_is_told_with_its_rate_and_what_keeps_it_narrow() -> None:
 @pytest.mark.parametrize("clean", [{"element": 16}, {"width": 512}, {"width": 128}, {"pattern": "strided"}])
 def test_a_wide_or_widened_port_is_left_in_peace(clean: dict[str, Any]) -> None:
     assert found("narrow-port", narrow(**clean)) == []
+
+
+@pytest.mark.parametrize(("bytes_of_rest", "told"), [(2998 * 4, True), (3000 * 4, False)])
+def test_a_small_table_read_once_beside_greater_traffic_is_left_in_peace(bytes_of_rest: int, told: bool) -> None:
+    kernel = narrow(run=1000, executions=1000).clean("rest", 20, [I], executions=bytes_of_rest / 4 + 1)
+    assert bool(found("narrow-port", kernel)) == told
 
 
 def test_a_port_that_would_widen_once_unblocked_is_left_in_peace() -> None:

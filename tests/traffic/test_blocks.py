@@ -190,6 +190,26 @@ def test_neighbours_that_fill_the_stride_are_one_run() -> None:
     assert [item.walk.executions for item in three] == [64] * 3
 
 
+def test_neighbours_in_two_rows_are_two_runs_that_take_turns() -> None:
+    """a[2i], a[2i+1], b[2i], b[2i+1] with b a row further on"""
+    i = loop("i", 32)
+    four = traffic(*(read("a", at(i) * 8 + 4 * k + row, i) for row in (0, 1024) for k in range(2)))
+    assert [(item.walk.pattern, item.walk.run_elements, item.blocked) for item in four] == [
+        ("sequential", 64, ("interleaved",))
+    ] * 4
+
+
+def test_neighbours_stored_in_both_branches_are_one_run() -> None:
+    """if (wet) { out[2i] = a; out[2i+1] = b; } else { out[2i] = c; out[2i+1] = d; }"""
+    i = loop("i", 64)
+    wet = drawn(i)
+    four = traffic(
+        *(write("out", at(i) * 8 + 4 * k, i, guards=(guard,)) for guard in (wet, negation(wet)) for k in range(2))
+    )
+    assert [item.blocked for item in four] == [()] * 4
+    assert [(item.walk.run_elements, item.walk.executions) for item in four] == [(128, 32)] * 4
+
+
 def test_neighbours_that_leave_a_gap_are_not() -> None:
     """a[4i], a[4i+1]"""
     i = loop("i", 64)

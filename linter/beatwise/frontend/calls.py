@@ -20,7 +20,9 @@ from beatwise.model.types import (
     RecordType,
     StreamType,
     Type,
+    UnknownType,
     VectorType,
+    VoidType,
 )
 
 METHODS = frozenset({kinds.METHOD, kinds.CONVERSION, kinds.DESTRUCTOR})
@@ -42,13 +44,13 @@ def call(given: Lowering, cursor: Cursor) -> Expression:
         member = _callee_expression(cursor)
         if member is not None and member.kind == kinds.MEMBER and _names(given, member, callee.name):
             receiver = _receiver(given, member)
-            arguments = _arguments(given, passed, declaration, 0)
+            arguments = _arguments(given, passed, declaration, callee)
             return _method(given, callee, declaration, receiver, arguments, of, place, operator=False)
         if passed:
             receiver = given.expression(passed[0])
-            arguments = _arguments(given, passed[1:], declaration, 0)
+            arguments = _arguments(given, passed[1:], declaration, callee)
             return _method(given, callee, declaration, receiver, arguments, of, place, operator=True)
-    arguments = _arguments(given, passed, declaration, 0)
+    arguments = _arguments(given, passed, declaration, callee)
     return _function(given, callee, declaration, cursor, arguments, of, place)
 
 
@@ -80,21 +82,26 @@ def _receiver(given: Lowering, member: Cursor) -> Expression:
     return dereferenced(base) if given.is_pointer(parts[0]) else base
 
 
-def _arguments(given: Lowering, passed: list[Cursor], declaration: Cursor, first: int) -> tuple[Expression, ...]:
-    return tuple(_argument(given, one, declaration, first + index) for index, one in enumerate(passed))
+def _arguments(given: Lowering, passed: list[Cursor], declaration: Cursor, callee: Callee) -> tuple[Expression, ...]:
+    """The arguments; defaults that the source leaves out are filled in, but for functions known by name only."""
+    found = []
+    for index, one in enumerate(passed):
+        if library().clang_getCursorExtent(one).begin or operands(one):
+            found.append(given.expression(one))
+        elif callee.given or callee.name.startswith("operator"):  # the mark of postfix ++ is one, too
+            found.append(_default(given, one, declaration, index))
+    return tuple(found)
 
 
-def _argument(given: Lowering, passed: Cursor, declaration: Cursor, index: int) -> Expression:
-    if library().clang_getCursorExtent(passed).begin or operands(passed):
-        return given.expression(passed)
-    value = given.folded(passed)  # left out in the source: the default of the parameter
+def _default(given: Lowering, left_out: Cursor, declaration: Cursor, index: int) -> Expression:
+    value = given.folded(left_out)
     if value is not None:
-        return Literal(value, given.type(passed), given.place(passed))
+        return Literal(value, given.type(left_out), given.place(left_out))
     parameter = library().clang_Cursor_getArgument(declaration, index)
-    default = operands(parameter)
-    if default:
-        return converted(given.expression(default[-1]), given.type(parameter), given.place(parameter))
-    return Opaque("a default argument", (), given.type(passed), given.place(passed))
+    written = operands(parameter)
+    if written:
+        return converted(given.expression(written[-1]), given.type(parameter), given.place(parameter))
+    return Opaque("a default argument", (), given.type(left_out), given.place(left_out))
 
 
 def _function(
@@ -156,7 +163,7 @@ def _method(
         template = library().clang_getSpecializedCursorTemplate(declaration)
         generic = template.kind == kinds.FUNCTION_TEMPLATE  # only the call knows which instance it is
         return Call(callee.key if generic else None, name, None, arguments, of, place, target=receiver)
-    if callee.given:
+    if callee.given and isinstance(receiver.type, RecordType | UnknownType | VoidType):
         if name == "operator=" and callee.key is None and len(arguments) == 1:  # the compiler's own
             return Assign("", receiver, converted(arguments[0], receiver.type, place), receiver.type, place)
         return Call(callee.key, name, receiver, arguments, of, place, template_arguments=_template(given, declaration))
@@ -214,7 +221,7 @@ def _construction(given: Lowering, cursor: Cursor, constructor: Cursor) -> Expre
     passed = [library().clang_Cursor_getArgument(cursor, index) for index in range(_count(cursor))]
     if len(passed) == 1 and passed[0].kind == kinds.BRACED and not callee.given:
         return braced(given, passed[0], of)
-    arguments = _arguments(given, passed, constructor, 0)
+    arguments = _arguments(given, passed, constructor, callee)
     return constructed(callee, arguments, of, place)
 
 

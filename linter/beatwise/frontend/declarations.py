@@ -42,16 +42,19 @@ def declared(given: Lowering, cursor: Cursor) -> list[Statement]:
                     given.scope.constants[given.name(one)] = library().clang_getEnumConstantDeclValue(one)
         return []
     if cursor.kind == kinds.UNEXPOSED_DECLARATION:
-        return _decomposed(given, cursor)
+        if not decompose(given, cursor):
+            return []
+        whole = variable(given, cursor)
+        return [Declare(whole, whole.place)]
     return [Lost("a declaration of a kind not known here", given.place(cursor))]
 
 
-def _decomposed(given: Lowering, cursor: Cursor) -> list[Statement]:
-    """``auto [a, b] = value``: one variable without a name; the names stand for its parts."""
+def decompose(given: Lowering, cursor: Cursor) -> bool:
+    """``auto [a, b] = value`` is one variable without a name; the names stand for its parts. Whether it is one."""
     names = [one for one in children(cursor) if one.kind == kinds.UNEXPOSED_DECLARATION]
-    if not names:
-        return []
-    whole = variable(given, cursor)
+    if not names or cursor.kind != kinds.UNEXPOSED_DECLARATION:
+        return False
+    whole = variable(given, cursor, initial=False)
     of = whole.type.to if isinstance(whole.type, ReferenceType) else whole.type
     used = Name(whole.key, whole.name, of, whole.place)
     for index, one in enumerate(names):
@@ -62,7 +65,7 @@ def _decomposed(given: Lowering, cursor: Cursor) -> list[Statement]:
         elif isinstance(of, ArrayType):
             part = Index(used, Literal(index, IntType(32, True, 4), place), part_type, place)
         given.bindings[one.identity or 0] = part
-    return [Declare(whole, whole.place)]
+    return True
 
 
 def _lost_value(given: Lowering, cursor: Cursor, made: Variable) -> Lost | None:

@@ -13,6 +13,7 @@ from beatwise.frontend.objects import dereferenced, named, this_object
 from beatwise.model.kernel import (
     Assign,
     Binary,
+    Cast,
     Expression,
     Index,
     Literal,
@@ -66,6 +67,17 @@ def _cast(given: Lowering, cursor: Cursor) -> Expression:
     if not parts:
         return folded(given, cursor)
     return converted(given.expression(parts[-1]), given.type(cursor), given.place(cursor))
+
+
+def _reinterpreted(given: Lowering, cursor: Cursor) -> Expression:
+    """A reinterpreted pointer; a reinterpreted reference is what the reinterpreted address points to."""
+    parts = operands(cursor)
+    of, place = given.type(cursor), given.place(cursor)
+    value = given.expression(parts[-1]) if parts else None
+    if value is None or isinstance(of, PointerType) or isinstance(value.type, PointerType | ArrayType):
+        return _cast(given, cursor)
+    address = Unary("&", value, PointerType(value.type), place)
+    return Unary("*", Cast(address, PointerType(of), place), of, place)
 
 
 def _reference(given: Lowering, cursor: Cursor) -> Expression:
@@ -178,7 +190,8 @@ LOWER: dict[int, Lower] = {
     kinds.BINARY: _binary,
     kinds.COMPOUND_ASSIGNMENT: _binary,
     kinds.CONDITIONAL: _conditional,
-    **dict.fromkeys((kinds.C_CAST, kinds.STATIC_CAST, kinds.DYNAMIC_CAST, kinds.REINTERPRET_CAST), _cast),
+    **dict.fromkeys((kinds.C_CAST, kinds.STATIC_CAST, kinds.DYNAMIC_CAST), _cast),
+    kinds.REINTERPRET_CAST: _reinterpreted,
     **dict.fromkeys((kinds.CONST_CAST, kinds.FUNCTIONAL_CAST), _cast),
     kinds.COMPOUND_LITERAL: _compound_literal,
     kinds.BRACED: _braced,

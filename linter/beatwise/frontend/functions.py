@@ -11,7 +11,7 @@ from beatwise.frontend.lowering import Lowering, Scope, default_of
 from beatwise.frontend.options import with_numbers
 from beatwise.frontend.statements import block, named_by, told
 from beatwise.model.kernel import Directive, Expression, Function, Variable
-from beatwise.model.types import RecordType, Type
+from beatwise.model.types import CallableType, RecordType, Type
 
 
 def function(given: Lowering, key: str, definition: Cursor, script: tuple[Directive, ...]) -> Function:
@@ -42,7 +42,7 @@ def function(given: Lowering, key: str, definition: Cursor, script: tuple[Direct
         given.types.read(lib.clang_getResultType(lib.clang_getCursorType(definition))),
         body,
         given.place(definition),
-        record.key if isinstance(record, RecordType) else None,
+        record.key if isinstance(record, RecordType) and not _is_lambda(given, definition) else None,
         tuple(initializers),
         directives,
         is_extern_c(definition),
@@ -56,11 +56,22 @@ def is_extern_c(definition: Cursor) -> bool:
 
 
 def _record(given: Lowering, definition: Cursor) -> Type | None:
+    """The type of the object that ``this`` points to."""
     if definition.kind == kinds.FUNCTION:
         return None
     lib = library()
     parent = lib.clang_getCursorSemanticParent(definition)
-    return given.types.of(parent) if parent.kind in kinds.RECORDS else None
+    while parent.kind in kinds.RECORDS:
+        record = given.types.of(parent)
+        if not isinstance(record, CallableType):
+            return record
+        around = lib.clang_getCursorSemanticParent(parent)  # of a lambda: the object of the method around it
+        parent = lib.clang_getCursorSemanticParent(around)
+    return None
+
+
+def _is_lambda(given: Lowering, definition: Cursor) -> bool:
+    return isinstance(given.types.of(library().clang_getCursorSemanticParent(definition)), CallableType)
 
 
 def _labels(script: tuple[Directive, ...]) -> dict[str, tuple[Directive, ...]]:

@@ -2,27 +2,55 @@
 
 from __future__ import annotations
 
+import re
+
 from beatwise.frontend import kinds
-from beatwise.frontend.conversions import converted, same
+from beatwise.frontend.conversions import converted, same, wrapped
 from beatwise.frontend.libclang import Cursor, children, library
 from beatwise.frontend.lowering import Lowering, operands
 from beatwise.model.kernel import Expression, Items, Literal, Opaque
 from beatwise.model.types import ArrayType, CallableType, IntType, PointerType, RealType, RecordType, Type
 
+LONG_BYTES = 400  #: a braced list with more text than this may be a table
+#: Decimal and hexadecimal integers; an octal one is left to the compiler.
+PLAIN_INTEGERS = re.compile(r"\{(?:\s*-?\s?(?:0[xX][0-9a-fA-F]+|[1-9]\d*|0)[uUlL]{0,3}\s*(?:,|(?=\})))+\s*\}")
+
 
 def braced(given: Lowering, cursor: Cursor, of: Type) -> Expression:
     """A braced list as a value of type ``of``."""
     place = given.place(cursor)
+    if isinstance(of, ArrayType) and isinstance(of.element, IntType) and (table := _table(given, cursor, of.element)):
+        return Items(table, of, place)
     listed = [child for child in children(cursor) if child.kind not in kinds.REFERENCES]
     if isinstance(of, IntType | RealType | PointerType | CallableType):
         if not listed:
             return Literal(0, of, place)
         return converted(given.expression(listed[0]), of, place)
+    if isinstance(of, ArrayType) and len(listed) == 1 and listed[0].kind == kinds.BRACED and given.is_record(cursor):
+        return braced(given, listed[0], of)  # the braces of the class and those of the array in it
     remaining = listed[::-1]
     if isinstance(of, ArrayType | RecordType) and len(listed) == 1 and listed[0].kind != kinds.BRACED:
         if same(given.type(listed[0]), of) or listed[0].kind == kinds.STRING:
             return given.expression(listed[0])
     return Items(tuple(_items(given, remaining, of)), of, place)
+
+
+def _table(given: Lowering, cursor: Cursor, element: IntType) -> tuple[Literal, ...] | None:
+    """A long list of plain integers, read from its text: tables have thousands. All share the place of the list."""
+    extent = library().clang_getCursorExtent(cursor)
+    if extent.end - extent.begin < LONG_BYTES:
+        return None
+    written = given.places.text(extent)
+    if written is None or not PLAIN_INTEGERS.fullmatch(written):
+        return None
+    place = given.places.place(extent)
+    numbers = written.strip("{} \t\r\n,").split(",")
+    return tuple(Literal(wrapped(_number(one), element), element, place) for one in numbers)
+
+
+def _number(written: str) -> int:
+    plain = written.strip().rstrip("uUlL")
+    return int(plain, 16 if "x" in plain or "X" in plain else 10)
 
 
 def _items(given: Lowering, remaining: list[Cursor], of: Type) -> list[Expression]:

@@ -8,6 +8,7 @@ from __future__ import annotations
 
 import ctypes
 import functools
+import importlib.util
 from collections.abc import Mapping, Sequence
 from ctypes import CFUNCTYPE, POINTER, Structure, byref, c_char_p, c_int, c_longlong, c_uint, c_ulonglong, c_void_p
 from pathlib import Path
@@ -168,12 +169,12 @@ PROTOTYPES: dict[str, tuple[Any, list[Any]]] = {
 @functools.cache
 def library() -> Any:
     """libclang, with the prototypes set. Loaded once, when first asked for."""
-    import clang.cindex
-
-    folder = Path(clang.cindex.__file__).parent / "native"
-    candidates = [*folder.glob("libclang.*")]
-    name = str(candidates[0]) if candidates else clang.cindex.conf.get_filename()
-    loaded = ctypes.CDLL(name)
+    wheel = importlib.util.find_spec("clang")  # its binding stays unused: importing it takes longer than the library
+    folders = [Path(folder) / "native" for folder in (wheel.submodule_search_locations or ())] if wheel else []
+    found = next((path for folder in folders for path in sorted(folder.glob("libclang.*"))), None)
+    if found is None:
+        raise ImportError("the package 'libclang' is not installed, or holds no library")
+    loaded = ctypes.CDLL(str(found))
     for function, (result, arguments) in PROTOTYPES.items():
         prototype = getattr(loaded, function)
         prototype.restype, prototype.argtypes = result, arguments

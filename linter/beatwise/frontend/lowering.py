@@ -20,7 +20,7 @@ from beatwise.frontend.libclang import (
     usr,
 )
 from beatwise.frontend.places import GivenFile, Places
-from beatwise.frontend.types import POINTER, Types
+from beatwise.frontend.types import POINTER, RECORD, Types
 from beatwise.model.kernel import Directive, Expression, FunctionName, Opaque, Statement, Variable
 from beatwise.model.place import Place
 from beatwise.model.types import Type
@@ -128,6 +128,12 @@ class Lowering:
         lib = library()
         kind: int = lib.clang_getCanonicalType(lib.clang_getCursorType(cursor)).kind
         return kind == POINTER
+
+    def is_record(self, cursor: Cursor) -> bool:
+        """Whether an expression is of a class of C++ (some classes are arrays in the model)."""
+        lib = library()
+        kind: int = lib.clang_getCanonicalType(lib.clang_getCursorType(cursor)).kind
+        return kind == RECORD
 
     def name(self, declaration: Cursor) -> str:
         identity = declaration.identity or 0
@@ -275,8 +281,8 @@ class Lowering:
     def enter(self, cursor: Cursor) -> tuple[GivenFile, int, int] | None:
         return self.places.stretch(library().clang_getCursorExtent(cursor))
 
-    def directives_in(self, stretch: tuple[GivenFile, int, int] | None) -> list[Directive]:
-        """The pragmas written in a stretch of text that have no owner yet; they now have one."""
+    def directives_in(self, stretch: tuple[GivenFile, int, int] | None, *, claim: bool = True) -> list[Directive]:
+        """The pragmas written in a stretch of text that have no owner yet; with ``claim``, they now have one."""
         if stretch is None:
             return []
         file, start, end = stretch
@@ -287,7 +293,8 @@ class Lowering:
             if offsets[index] >= end:
                 break
             if (file.name, offsets[index]) not in claimed:
-                claimed.add((file.name, offsets[index]))
+                if claim:
+                    claimed.add((file.name, offsets[index]))
                 mine.append(found[index])
         return mine
 

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Mapping
 from dataclasses import dataclass, field
 from typing import Literal as Word
 
@@ -47,7 +47,7 @@ class Draft:
         """The prelude as C++."""
         lines = [f"#include <{header}>" for header in self.includes]
         if self.names or self.of_any:
-            members = " ".join(_member(name, kind, "static ") for name, kind in self.of_any.items())
+            members = " ".join(_members(self.of_any, "static "))
             lines += [f"#define _BwAnyMembers {members}", "#include <_bw/invented.h>"]
         lines += [f"#define {name} {text}".rstrip() for name, text in self.macros.items()]
         lines += [_within(scope, "") for scope in sorted(self.namespaces)]
@@ -83,24 +83,23 @@ def _declaration(name: str, entry: Entry) -> Iterator[str]:
 
 
 def _body(name: str, entry: Entry) -> str:
-    members = " ".join(_member(member, kind, "") for member, kind in entry.members.items())
+    members = " ".join(_members(entry.members, ""))
     return f": _BwUsable {{ _BwStandIn({name}) {members} {' '.join(entry.declared)} }};"
 
 
-def _member(name: str, kind: MemberKind, storage: str) -> str:
-    match kind:
-        case "value":
-            return f"{storage}_BwAny {name};"
-        case "type":
-            return f"struct {name} : _BwUsable {{ _BwStandIn({name}) }};"
-        case "function":
-            return (
-                f"template <class... _BwA> static _BwAny {name}(_BwA &&...);"
-                f" template <auto _BwP, auto... _BwQ, class... _BwA> static _BwAny {name}(_BwA &&...);"
-                f" template <class _BwP, class... _BwA> static _BwAny {name}(_BwA &&...);"
-            )
-        case "constant":
-            return f"static constexpr int {name} = {FIRST_VALUE};"
+def _members(members: Mapping[str, MemberKind], storage: str) -> Iterator[str]:
+    for number, (name, kind) in enumerate(members.items()):
+        match kind:
+            case "value":
+                yield f"{storage}_BwAny {name};"
+            case "type":
+                yield f"struct {name} : _BwUsable {{ _BwStandIn({name}) }};"
+            case "function":
+                yield f"template <class... _BwA> static _BwAny {name}(_BwA &&...);"
+                yield f"template <auto _BwP, auto... _BwQ, class... _BwA> static _BwAny {name}(_BwA &&...);"
+                yield f"template <class _BwP, class... _BwA> static _BwAny {name}(_BwA &&...);"
+            case "constant":
+                yield f"static constexpr int {name} = {FIRST_VALUE + VALUE_STEP * number};"
 
 
 def _default(kind: Parameter) -> str:

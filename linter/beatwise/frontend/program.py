@@ -12,7 +12,7 @@ from beatwise.frontend import kinds
 from beatwise.frontend.declarations import variable
 from beatwise.frontend.expressions import LOWER
 from beatwise.frontend.functions import function, is_extern_c
-from beatwise.frontend.headers import INCLUDE_DIRECTORY
+from beatwise.frontend.headers import INCLUDE_DIRECTORY, header_files
 from beatwise.frontend.libclang import Cursor, TranslationUnit, children, library, location, usr
 from beatwise.frontend.lowering import Lowering
 from beatwise.frontend.mentions import mentions
@@ -88,9 +88,9 @@ def _read(
     defines: Sequence[str],
     script: tuple[Directive, ...],
 ) -> Program:
-    texts = {**includes, **files}
+    texts = {**{name: text for name, text in includes.items() if not _is_ours(name)}, **files}
     given = {virtual_path(name): GivenFile(name, text.encode("utf-8", "replace")) for name, text in texts.items()}
-    directives = {name: pragmas_in(text, name) for name, text in texts.items()}
+    directives: dict[str, tuple[Directive, ...]] = {}
     units: list[Lowering] = []
     inventions: list[Invention] = []
     problems: list[Problem] = []
@@ -102,6 +102,9 @@ def _read(
             continue
         inventions += [one for one in made if one not in inventions]
         problems += _problems(unit, given, name)
+        for part, file in given.items():
+            if file.name not in directives and unit.file_base(part) is not None:
+                directives[file.name] = pragmas_in(texts[file.name], file.name)
         skipped = _skipped(unit, given)
         active = {file: _active(found, skipped.get(file, [])) for file, found in directives.items()}
         units.append(Lowering(unit, given, path, INCLUDE_DIRECTORY, number, active, skipped, bool(made), EXPRESSIONS))
@@ -109,7 +112,7 @@ def _read(
     linked = {usr(cursor): (one, cursor) for one, cursor in reversed(definitions)}
     for one in units:
         one.linked = linked
-    tops = _named_tops(definitions, top) if top is not None else _likely_tops(definitions, directives, script)
+    tops = _named_tops(definitions, top) if top is not None else _likely_tops(definitions, script)
     keys = [key for one, cursor in tops or definitions if (key := one.request(cursor))]
     functions = _lowered(units, script)
     if not tops:
@@ -123,7 +126,13 @@ def _read(
         tuple(dict.fromkeys(key for key in keys if key in functions)),
         tuple(inventions),
         tuple(problems),
+        tuple(dict.fromkeys(one.place.file for one in script)),
     )
+
+
+def _is_ours(name: str) -> bool:
+    """Whether a header is one that we declare ourselves: a copy of it beside the source would say no more."""
+    return f"{INCLUDE_DIRECTORY}/{name.rpartition('/')[2]}" in header_files() and name.endswith(".h")
 
 
 def _problems(unit: TranslationUnit, given: Mapping[str, GivenFile], name: str) -> list[Problem]:
@@ -202,16 +211,11 @@ def _named_tops(definitions: Definitions, top: str) -> Definitions:
     return found
 
 
-def _likely_tops(
-    definitions: Definitions, directives: Mapping[str, tuple[Directive, ...]], script: tuple[Directive, ...]
-) -> Definitions:
+def _likely_tops(definitions: Definitions, script: tuple[Directive, ...]) -> Definitions:
     """Those with memory-mapped interface directives, else those with C linkage and pointers among their parameters."""
-    mapped = {(one.place.file, one.place.offset) for found in directives.values() for one in found if _is_mapped(one)}
     named = {one.options.get("function", "").rpartition("::")[2] for one in script if _is_mapped(one)}
     with_directive = [
-        (one, cursor)
-        for one, cursor in definitions
-        if one.name(cursor) in named or _holds(one, cursor, mapped) or _holds_macro_made(one, cursor)
+        (one, cursor) for one, cursor in definitions if one.name(cursor) in named or _holds_mapped(one, cursor)
     ]
     if with_directive:
         return with_directive
@@ -222,8 +226,11 @@ def _is_mapped(directive: Directive) -> bool:
     return directive.kind == "interface" and directive.options.get("mode", "").lower() == "m_axi"
 
 
-def _holds_macro_made(given: Lowering, cursor: Cursor) -> bool:
-    """Whether a memory-mapped interface directive in the outermost block of a function comes from a ``_Pragma``."""
+def _holds_mapped(given: Lowering, cursor: Cursor) -> bool:
+    """Whether a memory-mapped interface directive is written in a function, or made by a macro in its outermost block."""
+    stretch = given.enter(cursor)
+    if stretch is not None and any(_is_mapped(one) for one in given.directives_in(stretch, claim=False)):
+        return True
     if not given.has_pragma_operators:
         return False
     for body in children(cursor):
@@ -232,14 +239,6 @@ def _holds_macro_made(given: Lowering, cursor: Cursor) -> bool:
                 if one.kind == kinds.STATIC_ASSERT and (found := pragma(given, one)) and _is_mapped(found):
                     return True
     return False
-
-
-def _holds(given: Lowering, cursor: Cursor, places: set[tuple[str, int]]) -> bool:
-    stretch = given.enter(cursor)
-    if stretch is None:
-        return False
-    file, start, end = stretch
-    return any(name == file.name and start <= offset < end for name, offset in places)
 
 
 def _has_memory(given: Lowering, cursor: Cursor) -> bool:

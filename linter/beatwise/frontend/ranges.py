@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from beatwise.frontend.declarations import variable
+from beatwise.frontend.declarations import decompose, variable
 from beatwise.frontend.libclang import Cursor
 from beatwise.frontend.lowering import Lowering
 from beatwise.model.kernel import (
@@ -28,18 +28,23 @@ COUNTER = IntType(32, True, 4)
 TRUTH = IntType(1, False, 1)
 
 
+def range_item(given: Lowering, element: Cursor) -> Variable:
+    """The variable that holds one element in turn; its parts get their names, if it has some."""
+    decompose(given, element)
+    return variable(given, element, initial=False)
+
+
 def range_loop(
     given: Lowering,
     cursor: Cursor,
-    element: Cursor,
+    item: Variable,
     range_cursor: Cursor,
     body: Statement,
     directives: tuple[Directive, ...],
-) -> list[Statement]:
+) -> Loop:
     """``for (element : range) body`` as a loop over a counter of our own."""
     place = given.place(cursor)
     values = given.expression(range_cursor)
-    item = variable(given, element, initial=False)
     before: tuple[Statement, ...] = ()
     of = values.type
     if isinstance(values, Items):
@@ -60,7 +65,7 @@ def range_loop(
     bound_item = Variable(item.key, item.name, item.type, item.place, "local", fetched, item.constant)
     inside = body if isinstance(body, Block) else Block((body,), body.place)
     whole = Block((Declare(bound_item, item.place), *inside.body), inside.place, inside.directives)
-    loop = Loop(
+    return Loop(
         (*before, Declare(counter, place)),
         Binary("<", index, bound, TRUTH, place),
         Step(1, True, index, COUNTER, place),
@@ -70,7 +75,6 @@ def range_loop(
         directives,
         place,
     )
-    return [loop]
 
 
 def _element(item: Variable) -> Type:

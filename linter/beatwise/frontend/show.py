@@ -155,7 +155,7 @@ def show_expression(one: Expression) -> str:
         case This():
             return "this"
         case Unary(op=op, operand=operand):
-            return f"{op}{_wrapped(operand)}"
+            return f"{op}({shown})" if (shown := _wrapped(operand)).startswith("-") else f"{op}{shown}"
         case Step(by=by, prefix=prefix, operand=operand):
             sign = "++" if by > 0 else "--"
             return f"{sign}{_wrapped(operand)}" if prefix else f"{_wrapped(operand)}{sign}"

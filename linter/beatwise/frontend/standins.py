@@ -170,8 +170,9 @@ class _Work:
 
     def _shouted_macros(self, one: Complaint) -> bool:
         """Where the text makes no sense at all: its names in capitals that can be nothing but macros."""
-        if not re.match("expected|cannot combine|unexpected", one.text):
+        if not re.match("expected|cannot combine|unexpected|invalid operands", one.text):
             return False
+        holder = re.search(r"\b([A-Z_][A-Z0-9_]*)\s*\([^()]*$", one.before)
         changed = False
         for name in re.findall(r"\b[A-Z_][A-Z0-9_]{2,}\b", one.line):
             if name in self.draft.names or any(re.search(rf"#\s*define\s+{name}\b", text) for text in self.texts):
@@ -181,6 +182,8 @@ class _Work:
                     changed |= self._macro(name, "(...)", one)
                 case "empty macro":
                     changed |= self._macro(name, "", one)
+                case "function" if holder and holder[1] == name:
+                    changed |= self._macro(name, "(...)", one)
         return changed
 
     def _namespaces(self, one: Complaint) -> bool:
@@ -273,11 +276,18 @@ class _Work:
             case text if "negative size" in text:
                 less = set(re.findall(r"-\s*(\w+)", one.line))
                 return _shrink([entry for name, entry in here.items() if name in less])
-            case text if re.match("no matching (?:function|member)|cannot initialize|assigning to", text):
-                return _make(
-                    _of([entry for name, entry in self.draft.names.items() if self._is_inner(name)], "constant"),
-                    "bound",
-                )
+            case text if re.match(
+                "no matching (?:function|member)|cannot initialize|assigning to|reference to type", text
+            ):
+                bounds = [entry for name, entry in self.draft.names.items() if self._is_bound(name)]
+                return _make(_of(bounds, "constant"), "bound")
+            case text if found := re.match(r"invalid range expression of type '(?:const )?(?:\w+::)*(\w+)", text):
+                owner = self.draft.names.get(found[1])
+                members = self.draft.of_any if found[1] == "_BwAny" else owner.members if owner else None
+                if members is None or "begin" in members:
+                    return False
+                members.update({"begin": "function", "end": "function"})
+                return True
             case text if "type parameter must be a type" in text:
                 return _make(_of(at, "constant", "bound"), "type") or self._flip(here, "int")
             case text if re.search("must be an expression|unexpected type name|does not refer to a value", text):
@@ -304,7 +314,7 @@ class _Work:
                     return False
                 owner.members[found[1]] = "value"
                 return self._tell(found[1], "member", one)
-            case text if re.match("expected|use of undeclared|unexpected", text):
+            case text if re.match("expected|use of undeclared|unexpected|invalid operands", text):
                 shouted = [name for name, entry in here.items() if entry.kind == "function" and name.isupper()]
                 for name in shouted:
                     del self.draft.names[name]
@@ -364,13 +374,15 @@ class _Work:
         name = one.name or one.word
         used = self.kinds(name)
         here = kind_of(name, one.before, one.after) if one.word == one.name else None
-        if here == "namespace" and not used & {"type", "template"}:
+        if here == "namespace" and not used & {"type", "template", "type argument"}:
             return "namespace"
-        return strongest({*used, *((here,) if here else ())})
+        kind = strongest({*used, *((here,) if here else ())})
+        return "type" if kind == "type argument" else kind
 
-    def _is_inner(self, name: str) -> bool:
-        """Whether the name is in an array bound other than the first."""
-        return any(re.search(rf"\]\s*\[[^\]]*\b{name}\b", text) for text in self.texts)
+    def _is_bound(self, name: str) -> bool:
+        """Whether the name is in an array bound that is part of a parameter's or reference's type."""
+        bound = rf"\]\s*\[[^\]]*\b{name}\b|\(\s*&\s*\w+\s*\)\s*\[[^\]]*\b{name}\b"
+        return any(re.search(bound, text) for text in self.texts)
 
     def _is_declared(self, name: str) -> bool:
         """Whether the source seems to declare the type, so that it is missing only for another error's sake."""

@@ -12,7 +12,7 @@ from beatwise.frontend.libclang import Cursor, children, library, spelling
 from beatwise.frontend.lost import lost_between
 from beatwise.frontend.lowering import Lowering, operands
 from beatwise.frontend.options import with_numbers
-from beatwise.frontend.ranges import range_loop
+from beatwise.frontend.ranges import range_item, range_loop
 from beatwise.frontend.switches import switch
 from beatwise.model.kernel import (
     Block,
@@ -233,10 +233,12 @@ def _leaves(body: Statement) -> bool:
 
 def _range_for(given: Lowering, cursor: Cursor) -> list[Statement]:
     parts = children(cursor)
-    if len(parts) < 3 or parts[0].kind != kinds.VARIABLE:
+    if len(parts) < 3 or parts[-3].kind not in (kinds.VARIABLE, kinds.UNEXPOSED_DECLARATION):
         return _lost(given, cursor)
+    first = [one for part in parts[:-3] for one in statements(given, part)]
+    item = range_item(given, parts[-3])
     body, directives = _body(given, parts[-1], cursor)
-    return range_loop(given, cursor, parts[0], parts[-2], body, directives)
+    return [*first, range_loop(given, cursor, item, parts[-2], body, directives)]
 
 
 def _label(given: Lowering, cursor: Cursor) -> list[Statement]:

@@ -60,7 +60,7 @@ REALS = {21: (32, 4), 22: (64, 8), 23: (128, 16), 30: (128, 16), 31: (16, 2), 32
 VOID, NULLPTR, COMPLEX, POINTER, LVALUE_REFERENCE, RVALUE_REFERENCE = 2, 24, 100, 101, 103, 104
 RECORD, ENUM, FUNCTION_NO_PROTO, FUNCTION, CONSTANT_ARRAY, VECTOR = 105, 106, 110, 111, 112, 113
 INCOMPLETE_ARRAY, VARIABLE_ARRAY, MEMBER_POINTER, EXT_VECTOR = 114, 115, 117, 176
-PARAMETER, BASE_SPECIFIER = 10, 44  #: CXCursorKind
+UNION, PARAMETER, BASE_SPECIFIER, PACKED = 3, 10, 44, 408  #: CXCursorKind
 INVENTED_BITS = 19  #: of the built-in type that stands in for an unknown number type
 NAMESPACE = re.compile(r"c:@N@(\w+)@")  #: of a USR
 BIT_INT = re.compile(r"(unsigned )?_BitInt\((\d+)\)")
@@ -278,41 +278,49 @@ class Types:
             return RecordType(key, name, size, ())
         self._open.add(identity)
         try:
-            members, exact = self._fields(given)
+            members, exact, bit_fields = self._fields(given)
+            listed = children(declaration)
             bases = tuple(
                 base
-                for child in children(declaration)
+                for child in listed
                 if child.kind == BASE_SPECIFIER and isinstance(base := self.of(child), RecordType)
             )
         finally:
             self._open.discard(identity)
-        if not exact:
-            members, size = _laid_out(members)
-        return RecordType(key, "" if name.startswith("(") else name, size, members, bases)
+        packed = any(one.kind == PACKED for one in listed) and not bit_fields
+        if (packed or not exact) and not bases and declaration.kind != UNION:
+            members, size = _laid_out(members, packed=packed)
+        return RecordType(key, "" if "(" in name else name, size, members, bases)
 
-    def _fields(self, given: ClangType) -> tuple[tuple[Field, ...], bool]:
-        """The members, those of anonymous ones among them; and whether the compiler's sizes are those of the model."""
+    def _fields(self, given: ClangType) -> tuple[tuple[Field, ...], bool, bool]:
+        """The members, those of anonymous ones among them; whether the compiler's sizes are those of the model; whether
+        some are bit fields."""
         lib = library()
-        found, exact = [], True
+        found, exact, bit_fields = [], True, False
         for member in fields(given):
             declared = lib.clang_getCursorType(member)
             kind = self.read(declared)
             offset = lib.clang_Cursor_getOffsetOfField(member)
+            bit_fields = bit_fields or bool(lib.clang_Cursor_isBitField(member))
             name, start = spelling(member), max(0, offset) // 8
-            if isinstance(kind, RecordType) and (not name or name.startswith("(")):  # its members count as ours
+            if isinstance(kind, RecordType) and (not name or "(" in name):  # its members count as ours
                 found += [Field(one.name, one.type, start + one.offset) for one in kind.fields]
             else:
                 found.append(Field(name, kind, start))
             if isinstance(kind, IntType | RealType | VectorType | RecordType | ArrayType) and kind.bytes:
                 exact = exact and lib.clang_Type_getSizeOf(declared) == kind.bytes
-        return tuple(found), exact
+        return tuple(found), exact, bit_fields
 
 
-def _laid_out(members: tuple[Field, ...]) -> tuple[tuple[Field, ...], int]:
-    """Members placed one after the other, each aligned to its own size, at most 8 bytes; and the size of it all."""
-    offset, widest, placed = 0, 1, []
+def _laid_out(members: tuple[Field, ...], *, packed: bool) -> tuple[tuple[Field, ...], int]:
+    """Members placed one after the other, each aligned to its own size, at most 8 bytes; and the size of it all.
+
+    Packed ones are not aligned: the compiler packs no members with constructors, but hardware packs its integers.
+    """
+    offset, widest = 0, 1
+    placed: list[Field] = []
     for member in members:
-        align = _alignment(member.type)
+        align = 1 if packed else _alignment(member.type)
         widest = max(widest, align)
         offset = -(-offset // align) * align
         placed.append(Field(member.name, member.type, offset))

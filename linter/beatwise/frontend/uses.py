@@ -16,21 +16,14 @@ Kind = Word[
     "function",
     "variable",
     "constant",
+    "type argument",
 ]
 
-#: A name used in several ways is the first of these that fits.
+#: A name used in several ways is the first of these that fits. A mere argument of a template is a type only where
+#: nothing else is known of it.
 STRONGEST: tuple[Kind, ...] = (
-    *(
-        "template",
-        "type",
-        "empty macro",
-        "namespace",
-        "call macro",
-        "function template",
-        "function",
-        "variable",
-        "constant",
-    ),
+    *("template", "type", "empty macro", "namespace", "call macro"),
+    *("function template", "function", "variable", "constant", "type argument"),
 )
 
 BUILT_IN = r"(?:void|bool|char|short|int|long|float|double|signed|unsigned|auto)"
@@ -73,6 +66,8 @@ def kinds(name: str, texts: Iterable[str]) -> frozenset[Kind]:
 def strongest(found: Iterable[Kind]) -> Kind:
     """The kind that explains all the others best; a constant if there is none."""
     seen = set(found)
+    if {"namespace", "type argument"} <= seen:
+        return "template" if "template" in seen else "type"
     return next((kind for kind in STRONGEST if kind in seen), "constant")
 
 
@@ -117,6 +112,10 @@ def kind_of(name: str, before: str, after: str) -> Kind | None:
     if re.match(r"(?:const\b\s*)?[*&]*\s*(?:const\b\s*)?[A-Za-z_]\w*\s*[;,=)(\[{:<]", after) and (
         begins or (before[-1:] in "(,<" and (after[0] not in "*&"))
     ):
+        return "type"
+    if before[-1:] in "(," and re.match(r"[*&]+\s*(?:const\b\s*)?[A-Za-z_]\w*\s*[,)=[]", after):
+        return None  # a parameter or a product
+    if after.startswith("{") and not before.endswith(")"):
         return "type"
     if after.startswith("("):
         return _before_parenthesis(after, begins)
@@ -205,8 +204,8 @@ def _argument(name: str, before: str) -> Kind:
     if re.fullmatch(r"(?:ap|ac)_\w+", template):
         return "constant"
     if name.isupper() or re.fullmatch(r"[A-Z0-9_]+", name):
-        return "type" if re.search(r"(?:^T_|_T$|TYPE|^T$)", name) else "constant"
-    return "type"
+        return "type argument" if re.search(r"(?:^T_|_T$|TYPE|^T$)", name) else "constant"
+    return "type argument"
 
 
 def template_parameters(name: str, texts: Iterable[str], values: Set[str]) -> tuple[str, ...]:
@@ -243,4 +242,4 @@ def _parameter(argument: str, texts: Iterable[str], values: Set[str]) -> tuple[i
             return 1, "int" if re.match(r"[\d(]", replaced[1]) else "class"
     if argument in values:
         return 0, "int"
-    return 0, "class" if kinds(argument, texts) & {"type", "template"} else "int"
+    return 0, "class" if strongest(kinds(argument, texts)) in ("type", "type argument", "template") else "int"

@@ -523,9 +523,9 @@ def _as_minimum(condition: Form, yes: Form, no: Form) -> Form | None:
     if factor != 1 or len(monomial) != 1 or monomial[0].kind != "operation" or monomial[0].name != "lt":
         return None
     gap = monomial[0].operands[0] - monomial[0].operands[1]
-    if yes - no == gap or yes - no == gap - 1:
+    if yes - no == gap or yes - no == gap + 1:
         return operation("min", yes, no)
-    if no - yes == gap or no - yes == gap - 1:
+    if no - yes == gap or no - yes == gap + 1:
         return operation("max", yes, no)
     return None
 
@@ -553,7 +553,9 @@ def lookup(table: tuple[int, ...], index: Form) -> Form:
 
 
 def substitute(form: Form, values: Mapping[Symbol, Form], memo: dict[Symbol, Form] | None = None) -> Form:
-    """The form with symbols replaced, simplified anew."""
+    """The form with symbols replaced, simplified anew; the form itself where there is nothing to replace."""
+    if not form.terms or values.keys().isdisjoint(form.leaves()):
+        return form
     memo = {} if memo is None else memo
     result = ZERO
     for monomial, factor in form.terms.items():

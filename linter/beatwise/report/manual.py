@@ -11,10 +11,10 @@ def page(rule: str, text: str) -> str:
 
     >>> print(page("short-run", "A run that ends early."), end="")
     short-run
-    ─────────
+    ---------
     A run that ends early.
     """
-    return f"{rule}\n{'─' * len(rule)}\n{text.strip()}\n"
+    return f"{rule}\n{'-' * len(rule)}\n{text.strip()}\n"
 
 
 def contents(pages: Mapping[str, str], width: int) -> str:

@@ -100,6 +100,8 @@ class Caller(Builtins):
         """Follows the function's body with these arguments; ``state`` becomes the state after it."""
         again = self.calls.count(function.key)
         if len(self.calls) >= CALLS_AT_MOST or again >= (1 if self.scouting else RECURSION_AT_MOST):
+            if not self.scouting:
+                self.notes.append((place, f"{function.name} calls itself too deeply to be followed"))
             return self.lost(f"{function.name} calls itself too deeply", place)
         outer, process = self.frame, self.process
         frame = Frame(function, next(self._activations), {}, receiver, (*outer.chain, place))

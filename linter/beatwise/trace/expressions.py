@@ -443,12 +443,12 @@ class Evaluator(Machine):
         self.types[root] = variable.type
         self._names[root] = variable.name
         state.cells[root] = {}
+        written, state.written = state.written, None
         if variable.initial is not None:
-            scouting, written = self.scouting, state.written
-            state.written = None
-            value = self.initial(variable.initial, state)
-            self._fill(root, variable.type, value, state)
-            self.scouting, state.written = scouting, written
+            self._fill(root, variable.type, self.initial(variable.initial, state), state)
+        elif isinstance(bare(variable.type), IntType):
+            self._fill(root, variable.type, Number(symbol_form(self.size_named(variable.name))), state)
+        state.written = written
 
     def _fill(self, root: Root, kind: Type, value: Value, state: State) -> None:
         if isinstance(value, Number) and isinstance(kind, ArrayType):
@@ -536,11 +536,7 @@ class Evaluator(Machine):
             return spot
         return value
 
-    def declare(self, variable: object, state: State) -> None:
-        assert isinstance(variable, Variable)
-        self._declare(variable, state)
-
-    def _declare(self, variable: Variable, state: State) -> None:
+    def declare(self, variable: Variable, state: State) -> None:
         frame = self.frame
         root: Root = (variable.key, 0 if variable.scope in ("static", "global") else frame.activation)
         frame.roots[variable.key] = root
@@ -548,13 +544,17 @@ class Evaluator(Machine):
         self.types[root] = kind
         self._names[root] = variable.name
         self.note_stream(variable, root)
-        if variable.scope == "static" and root in state.cells:
-            return
+        if variable.scope == "static":
+            self.statics[root] = variable
+            if root in state.cells:
+                return
         state.forget(root)
         if state.written is not None:
             state.written.add((root, ()))
         state.cells[root] = {}
         if variable.initial is None:
+            if variable.scope == "static" and isinstance(kind, IntType):
+                self._fill(root, kind, NOTHING, state)
             return
         if isinstance(kind, ReferenceType):
             spot = self.spot(variable.initial, state)

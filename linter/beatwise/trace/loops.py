@@ -24,7 +24,7 @@ from beatwise.model.form import (
     symbol_form,
     unknown,
 )
-from beatwise.model.kernel import Directive, Loop
+from beatwise.model.kernel import Directive, Expression, Loop
 from beatwise.model.types import ArrayType, IntType, PointerType, Type
 from beatwise.trace.calls import Caller
 from beatwise.trace.expressions import bare
@@ -182,6 +182,9 @@ class Looper(Caller):
         self.open = open_
         self.record.cut(mark)
         own = state.cells.keys()
+        for root in {cell[0] for cell in in_body | in_step} - own:
+            if root in self.statics:
+                self.declare(self.statics[root], state)
         if state.written is not None:
             state.written |= {cell for cell in in_body | in_step if cell[0] in own}
         return (
@@ -223,7 +226,7 @@ class Looper(Caller):
             for m, _ in early:
                 self._set(entry, m.cell, replaced(m.entering(), bound, {}))
             moving = [m for m in moving if m.symbol not in bound]
-            trips_early = self._early_trips(statement, entry, moving, provisional)
+            trips_early = self._early_trips(statement, entry, moving, early, provisional)
             if trips_early is not None:
                 high = bounds(trips_early)[1]
                 count_from = replace(provisional, high=None if high is None else max(0, high - 1))
@@ -263,8 +266,7 @@ class Looper(Caller):
             exits = [ONE]
         trips = self._trips(condition, exits, count_from, statement, trips_early)
         silent = self.record.mark() == mark
-        fuzzy = any(ANY in path for _, path in changed_in_body)
-        if silent and (solved.left or fuzzy) and self._is_short(trips, self.steps - steps):
+        if silent and _is_computed(solved, changed_in_body, hints) and self._is_short(trips, self.steps - steps):
             self.open = outer_open
             del self.record.loops[loop_number]
             assert trips.count is not None and trips.count.known is not None
@@ -351,7 +353,9 @@ class Looper(Caller):
             found.append((m, m.first() + symbol_form(provisional) * delta))
         return found
 
-    def _early_trips(self, statement: Loop, entry: State, moving: list[Moving], provisional: Symbol) -> Form | None:
+    def _early_trips(
+        self, statement: Loop, entry: State, moving: list[Moving], early: list[tuple[Moving, Form]], provisional: Symbol
+    ) -> Form | None:
         """How often the loop runs, when its condition hangs on nothing that the body changes."""
         if statement.condition is None or not statement.test_first:
             return None
@@ -359,11 +363,31 @@ class Looper(Caller):
         trial = entry.copy()
         trial.written = None
         condition = self.condition(statement.condition, trial)
+        wrapped = self._wrapped_to_false(statement.condition, entry, early, provisional) if condition.known else None
         self.record.cut(mark)
         if condition.leaves() & {m.symbol for m in moving}:
             return None
         trips = trips_while(condition, provisional)
-        return trips.count or self._wrapping(condition, provisional)
+        return trips.count or wrapped or self._wrapping(condition, provisional)
+
+    def _wrapped_to_false(
+        self, condition: Expression, entry: State, early: list[tuple[Moving, Form]], provisional: Symbol
+    ) -> Form | None:
+        """``for (unsigned i = 7; i < 8; --i)``: how often until an unsigned counter passes zero and fails the test."""
+        for m, form in early:
+            slope, first = form.coefficient(provisional), m.first().known
+            if not isinstance(m.kind, IntType) or m.kind.signed or first is None or slope is None:
+                continue
+            step = slope.known
+            if step is None or step >= 0:
+                continue
+            turns = first // -step + 1
+            trial = entry.copy()
+            trial.written = None
+            self._set(trial, m.cell, Number(number((first + step * turns) % (1 << m.kind.bits))))
+            if self.condition(condition, trial).known == 0:
+                return number(turns)
+        return None
 
     def _wrapping(self, condition: Form, symbol: Symbol) -> Form | None:
         """``for (unsigned i = n - 1; i < n; --i)`` ends when i passes below zero."""
@@ -591,6 +615,17 @@ class Looper(Caller):
                     made = unknown("", statement.place, self.open, symbol.depends)
                 swap[symbol] = symbol_form(replace(made, low=symbol.low, high=symbol.high))
         return substitute(form, swap)
+
+
+def _is_computed(
+    solved: Solved, changed: set[Cell], hints: Mapping[Root, Mapping[Path, Value]]
+) -> bool:
+    """Whether the loop computes something that no formula covers, and that is not data anyway."""
+    if any(not any(s.kind == "data" for s in carry.symbol.depends) for carry in solved.left):
+        return True
+    held = (hints.get(root, {}).get(path) for root, path in changed if ANY in path)
+    stored = [v.form.leaves() for v in held if isinstance(v, Number)]
+    return any(leaves and not any(s.kind == "data" or s.reason for s in leaves) for leaves in stored)
 
 
 def _argument(spot: Spot) -> str | Root | None:

@@ -39,6 +39,7 @@ from beatwise.model.kernel import (
     Return,
     Statement,
     Switch,
+    Variable,
 )
 from beatwise.model.place import Place
 from beatwise.model.types import (
@@ -51,6 +52,7 @@ from beatwise.model.types import (
     Type,
     UnknownType,
     VectorType,
+    VoidType,
 )
 from beatwise.trace.record import Recording
 from beatwise.trace.state import State, joined
@@ -132,6 +134,7 @@ class Machine:
         self.types: dict[Root, Type] = {}
         self.constant: set[Root] = set()
         self.given_used: dict[str, Symbol] = {}
+        self.statics: dict[Root, Variable] = {}  #: the static locals that were met
         self.notes: list[tuple[Place, str]] = []
         self._activations = count(1)
         self._loops = count(1)
@@ -282,7 +285,7 @@ class Machine:
         """An access whose argument is known to be one, but whose address is lost, is told as unresolved."""
         if spot.argument is None or self.scouting:
             return
-        kept = MemorySpot(spot.argument, spot.depends, 1, UnknownType(""))
+        kept = MemorySpot(spot.argument, spot.depends, 1, VoidType())
         self._access(kept, direction, place, state)
         access, loops = self.record.accesses[-1]
         self.record.accesses[-1] = (replace(access, unresolved=spot.reason), loops)
@@ -496,7 +499,7 @@ class Machine:
     def returned(self, expression: Expression, state: State) -> Value:
         raise NotImplementedError
 
-    def declare(self, variable: object, state: State) -> None:
+    def declare(self, variable: Variable, state: State) -> None:
         raise NotImplementedError
 
     def loop(self, statement: Loop, state: State) -> Flow:

@@ -209,6 +209,10 @@ def _on_tick(step: Form, x: Form, tick: Form) -> Form | None:
     """What x becomes when the clock ticks, if it keeps its value otherwise."""
     if tick == ONE:
         return step
+    parts = _operands(tick, "and?")
+    if parts is not None:
+        outer = _on_tick(step, x, parts[0])
+        return None if outer is None else _on_tick(outer, x, parts[1])
     choice = _operands(step, "select")
     if choice is None:
         return None

@@ -84,6 +84,9 @@ def _trace(program: Program, top: Function, given: Mapping[str, int]) -> Trace:
     state = State({}, ())
     parameters: dict[str, Symbol] = {}
     problems: list[Problem] = []
+    for key, variable in program.globals.items():
+        if not variable.constant and (key, 0) not in state.cells:
+            machine.define_global(key, state)
     for variable in top.parameters:
         root: Root = (variable.key, 0)
         frame.roots[variable.key] = root

@@ -7,7 +7,7 @@ nest (``replay``). Sizes that nobody knows are taken as ``ASSUMED_TRIPS``, and t
 from __future__ import annotations
 
 from collections.abc import Iterable, Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from math import gcd
 
 from beatwise.model.access import Access, LoopInstance
@@ -41,17 +41,37 @@ def walk(access: Access, given: Mapping[str, int]) -> Walk:
     if access.unresolved is not None:
         return Walk("unresolved", None, None, "constant", None, access.unresolved)
     sizes = {symbol: _size(symbol, given) for symbol in _parameters(access)}
-    trips = [_trips(loop, sizes) for loop in access.loops]
     lost = _lost(access)
     if lost is not None:
-        return Walk("unresolved", None, None, _worst(t.basis for t in trips), None, lost)
-    chosen = access.choice is not None and _by_data(access.choice.selector)
-    found = _by_formula(access, trips, sizes)
-    if found is None:
-        found = _by_walking(access, trips, sizes)
-    if chosen:
+        basis = _worst(_trips(loop, sizes).basis for loop in access.loops)
+        return Walk("unresolved", None, None, basis, None, lost)
+    found = _measured(access, sizes)
+    if not found.executions and not all(map(_is_given, sizes)):
+        found = _measured(*_taken_to_run(access, sizes))
+        found = replace(found, basis=_worst([found.basis, "assumed"]))
+    if access.choice is not None and _by_data(access.choice.selector):
         return _steered(access, found)
     return found
+
+
+def _measured(access: Access, sizes: Mapping[Symbol, int]) -> Walk:
+    trips = [_trips(loop, sizes) for loop in access.loops]
+    return _by_formula(access, trips, sizes) or _by_walking(access, trips, sizes)
+
+
+def _taken_to_run(access: Access, sizes: Mapping[Symbol, int]) -> tuple[Access, dict[Symbol, int]]:
+    """An access that only assumed sizes keep from running: sizes nobody knows then decide no branch, and loops that
+    count from one of them count from 0."""
+    unknown = {symbol for symbol in sizes if not _is_given(symbol)}
+    guards = tuple(guard for guard in access.guards if not unknown & guard.condition.leaves())
+    taken_off = {
+        symbol
+        for loop in access.loops
+        for monomial, factor in (loop.trips.terms.items() if loop.trips is not None else ())
+        for symbol in monomial
+        if factor < 0 and symbol in unknown
+    }
+    return replace(access, guards=guards), {**sizes, **dict.fromkeys(taken_off, 0)}
 
 
 # ------------------------------------------------------------------------------------------------------- sizes

@@ -5,7 +5,6 @@ from __future__ import annotations
 from collections import Counter, defaultdict
 from collections.abc import Hashable, Mapping, Sequence
 from dataclasses import dataclass
-from itertools import pairwise
 
 from beatwise.model.access import Access, Guard
 from beatwise.model.form import Form, negation
@@ -42,15 +41,17 @@ def seats(accesses: Sequence[Access]) -> tuple[Seat, ...]:
     numbers: dict[Hashable, int] = {}
     found: list[Seat | None] = [None] * len(accesses)
     for group in groups.values():
-        slots = sorted({keys[index][1] for index in group})
-        together = len(slots) > 1 and _one_run(accesses[group[0]], slots)
-        head = min(group, key=lambda index: keys[index][1])
+        first = {keys[index][1]: index for index in reversed(group)}
+        chains = _chains(sorted(first))
         for index in group:
+            chain = chains[keys[index][1]]
+            together = len(chain) > 1 and _step(accesses[index]) == len(chain) * accesses[index].element_bytes
+            head = first[chain[0]] if together else index
             found[index] = Seat(
                 sweep=numbers.setdefault(head if together else keys[index], len(numbers)),
                 element=numbers.setdefault(keys[index], len(numbers)),
-                head=head if together else index,
-                elements=len(slots) if together else 1,
+                head=head,
+                elements=len(chain) if together else 1,
                 alike=alike[parts[index]],
             )
     return tuple(seat for seat in found if seat is not None)
@@ -132,7 +133,6 @@ def _key(index: int, access: Access) -> tuple[Hashable, float]:
     if not access.loops or access.unresolved is not None:
         return index, 0
     constant, size = access.offset.constant, access.element_bytes
-    within = constant % size + access.part_bytes <= size
     family = (
         access.argument,
         access.interface,
@@ -141,7 +141,7 @@ def _key(index: int, access: Access) -> tuple[Hashable, float]:
         access.loops[-1].number,
         access.offset - constant,
     )
-    return family, constant // size if within else constant / size
+    return family, constant / size
 
 
 def _part(index: int, access: Access) -> Hashable:
@@ -149,12 +149,20 @@ def _part(index: int, access: Access) -> Hashable:
     return index if access.covers.endswith("[]") else access.covers
 
 
-def _one_run(access: Access, slots: Sequence[float]) -> bool:
-    """Whether elements at ``slots`` follow each other and an iteration moves them on by just as many."""
+def _chains(slots: Sequence[float]) -> dict[float, list[float]]:
+    """For each of the ascending slots, the slots that follow each other without a gap around it."""
+    chains: dict[float, list[float]] = {}
+    for slot in slots:
+        chains[slot] = chains.get(slot - 1, [])
+        chains[slot].append(slot)
+    return chains
+
+
+def _step(access: Access) -> int | None:
+    """Bytes by which the loop that moves the access moves it, where that is constant."""
     loop = moving_loop(access)
     step = access.offset.coefficient(loop.counter) if loop is not None else None
-    follow = all(after - before == 1 for before, after in pairwise(slots))
-    return follow and step is not None and step.known == len(slots) * access.element_bytes
+    return step.known if step is not None else None
 
 
 def _merged(found: list[tuple[Conditions, frozenset[int]]]) -> list[tuple[Conditions, frozenset[int]]]:

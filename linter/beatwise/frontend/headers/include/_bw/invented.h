@@ -26,8 +26,6 @@ struct _BwUsable {
   _BwAny operator-() const;
   _BwAny operator+() const;
   _BwAny operator~() const;
-  _BwAny *begin() const;
-  _BwAny *end() const;
 };
 struct _BwAny : _BwUsable {
   _BwAny() = default;
