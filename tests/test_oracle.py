@@ -34,7 +34,8 @@ def seen(tmp_path: Path, scratch: Path) -> Callable[[str], tuple[Observed, ...]]
 @pytest.mark.parametrize("subject", [*corpus(), *fixtures()], ids=str)
 def test_running_the_kernel_bears_out_what_is_said_of_it(subject: Subject, scratch: Path) -> None:
     assert subject.truth.expectations
-    assert objections(subject.truth, subject.observe(scratch)) == []
+    found = objections(subject.truth, subject.observe(scratch))
+    assert not found, "\n".join(found)
 
 
 def test_the_corpus_is_large_enough() -> None:

@@ -95,7 +95,10 @@ def test_what_is_given_settles_a_size_and_is_said_to(folder: Path) -> None:
 
 
 def test_a_top_function_is_looked_for_in_every_file(folder: Path) -> None:
-    assert kernels(folder, settings=replace(HASTY, top=("thin_b",))) == ["thin_b"]
+    found = survey([folder / "a.cpp", folder / "b.cpp"], replace(HASTY, top=("thin_b",)))
+    assert [sheet.kernel for sheet in found.kernels] == ["thin_b"]
+    assert (found.problems, found.failed) == ((), False)
+    assert kernels(folder, settings=replace(HASTY, top=("thin_c", "thin_a"))) == ["thin_a", "thin_c"]
     with pytest.raises(UnknownName, match="did you mean 'thin_b'"):
         survey([folder], replace(HASTY, top=("thinb",)))
 

@@ -17,7 +17,8 @@ if TYPE_CHECKING:
 
 @pytest.mark.parametrize("subject", [*corpus(), *fixtures()], ids=str)
 def test_audit_agrees_with_execution(subject: Subject) -> None:
-    assert disagreements(subject.truth, audit_json([subject.kernel], *subject.options)) == []
+    found = disagreements(subject.truth, audit_json([subject.kernel], *subject.options))
+    assert not found, "\n".join(found)
 
 
 ENTRY = {

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from pathlib import Path
 from typing import TYPE_CHECKING
@@ -51,7 +51,7 @@ class Outcome:
     sheets: tuple[Sheet, ...] = ()
     problems: tuple[Problem, ...] = ()
     complete: bool = False
-    functions: tuple[str, ...] = ()  #: that could have been named as top functions, when the one asked for is not there
+    functions: tuple[str, ...] = ()  #: that there are, when the top function asked for is not among them
     acceptances: tuple[Acceptance, ...] = ()
     used: frozenset[Acceptance] = frozenset()
 
@@ -102,9 +102,9 @@ def survey_texts(
     """The kernels of some texts (name -> text), analysed here and now, without a worker's limits."""
     from beatwise.source.directives import read_script
 
-    settings = Settings(top=(top,) if top else (), given=given or {}, define=tuple(defines))
+    settings = Settings(given=given or {}, define=tuple(defines))
     task = Task(files, includes or {}, boards.board(board), read_script(script, "script"), settings)
-    return tuple(kernel for _, kernels in _programs(task) for kernel in kernels)
+    return _program(task, top)[1]
 
 
 def analyse(task: Task) -> Outcome:
@@ -114,10 +114,15 @@ def analyse(task: Task) -> Outcome:
     from beatwise.source.acceptances import acceptances_in
 
     name = next(iter(task.files))
-    try:
-        programs = list(_programs(task))
-    except NoSuchTop as error:
-        return Outcome(problems=(Problem(name, None, str(error)),), functions=tuple(error.names))
+    programs: list[tuple[Program, tuple[KernelSurvey, ...]]] = []
+    functions: list[str] = []
+    for top in task.settings.top or (None,):
+        try:
+            programs.append(_program(task, top))
+        except NoSuchTop as error:
+            functions += error.names
+    if not programs:
+        return Outcome(complete=True, functions=tuple(functions))
     kernels = [kernel for _, found in programs for kernel in found]
     unread = [problem for program, _ in programs for problem in program.problems]
     if not kernels and not unread:
@@ -139,15 +144,14 @@ def analyse(task: Task) -> Outcome:
     )
 
 
-def _programs(task: Task) -> Iterator[tuple[Program, tuple[KernelSurvey, ...]]]:
-    """The program below each top function asked for, with its kernels."""
+def _program(task: Task, top: str | None) -> tuple[Program, tuple[KernelSurvey, ...]]:
+    """The program below a top function, or below all that look like one, with its kernels."""
     from beatwise.frontend.program import read_program
 
-    for top in task.settings.top or (None,):
-        program = read_program(
-            task.files, top=top, includes=task.includes, defines=task.settings.define, script=task.script
-        )
-        yield program, _kernels(program, task.board, task.settings)
+    program = read_program(
+        task.files, top=top, includes=task.includes, defines=task.settings.define, script=task.script
+    )
+    return program, _kernels(program, task.board, task.settings)
 
 
 def _kernels(program: Program, board: Board, settings: Settings) -> tuple[KernelSurvey, ...]:
@@ -180,11 +184,13 @@ def _names(paths: Sequence[Path]) -> set[str]:
 
 
 def _check_tops(tops: Sequence[str], outcomes: Sequence[Outcome]) -> None:
-    """A top function that no group has is a mistake in the command."""
+    """A top function that is nowhere is a mistake in the command; a file that was lost might have held it."""
+    if not all(outcome.complete for outcome in outcomes):
+        return
     present = {sheet.kernel for outcome in outcomes for sheet in outcome.sheets}
-    known = {name for outcome in outcomes for name in outcome.functions}
+    known = present.union(*(outcome.functions for outcome in outcomes))
     for top in tops:
-        if top not in present and known:
+        if top.rpartition("::")[2] not in present:
             raise UnknownName("top function", top, known)
 
 

@@ -215,7 +215,9 @@ def _peak_megabytes() -> float:
     except (OSError, StopIteration):
         import resource
 
-        return resource.getrusage(resource.RUSAGE_SELF).ru_maxrss / 1e6  # bytes where there is no /proc (macOS)
+        return (
+            resource.getrusage(resource.RUSAGE_SELF).ru_maxrss / 1e6
+        )  # in bytes where there is no /proc (from memory)
 
 
 def _answered(task: bytes, megabytes: int) -> bytes:

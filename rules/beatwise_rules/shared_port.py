@@ -55,10 +55,14 @@ CURES: frozenset[str] = frozenset()
 def find(facts: Facts) -> Iterator[Finding]:
     """One finding for each port with arguments that are used at the same time."""
     for port in facts.trace.interfaces:
-        mine = [traffic for traffic in facts.traffic if traffic.access.interface == port.name and goes_on(traffic)]
+        mine = [traffic for traffic in facts.traffic if traffic.access.interface == port.name and _is_known(traffic)]
         companies = list(_companies(mine))
         if companies:
             yield _told(facts, port, companies)
+
+
+def _is_known(traffic: Traffic) -> bool:
+    return goes_on(traffic) and traffic.walk.pattern != "unresolved"
 
 
 def _companies(mine: Sequence[Traffic]) -> Iterator[list[Traffic]]:

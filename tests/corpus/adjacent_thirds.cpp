@@ -1,4 +1,5 @@
 // truth: luminance rgb[1536] y[512]
+// Weights 0.299, 0.587, 0.114 of ITU-R BT.601 (from memory), times 256.
 extern "C" void luminance(const unsigned char *rgb, unsigned char *y) {
 #pragma HLS INTERFACE m_axi port=rgb bundle=gmem0
 #pragma HLS INTERFACE m_axi port=y bundle=gmem1

@@ -1,5 +1,5 @@
 // truth: probe n=100 keys[100]=0..9999 table[1088]=0..4 where[100]
-// Looks on until a free slot is found.
+// Looks on until a free slot is found. 40503 is 2^16 over the golden ratio: Knuth, TAOCP vol. 3, section 6.4 (from memory).
 extern "C" void probe(int n, const unsigned *keys, const unsigned *table, int *where) {
 #pragma HLS INTERFACE m_axi port=keys bundle=g0
 #pragma HLS INTERFACE m_axi port=table bundle=g1

@@ -1,4 +1,5 @@
 // truth: hashed in[4096] out[512]
+// 2654435761 is 2^32 over the golden ratio, made prime: Knuth, TAOCP vol. 3, section 6.4 (from memory).
 extern "C" void hashed(const int *in, int *out) {
 #pragma HLS INTERFACE m_axi port=in bundle=g0
 #pragma HLS INTERFACE m_axi port=out bundle=g1

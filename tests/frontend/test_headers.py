@@ -1,4 +1,4 @@
-"""Our own headers: what a kernel may include parses, means what it should, and takes the bytes that hardware gives it."""
+"""Our own headers: what a kernel may include parses, means what it should, and takes the bytes of the hardware."""
 
 from __future__ import annotations
 
@@ -155,6 +155,24 @@ def test_what_kernels_do_with_the_types_is_understood(use: Path) -> None:
 
 def test_there_are_uses() -> None:
     assert len(USES) >= 8
+
+
+LARGE = "static {0} zeros[1 << 20] = {{}}; static {0} given[1 << 20] = {{{{0}}}}; static {0} unset[1 << 20];"
+
+
+@pytest.mark.parametrize(
+    "name", ["ap_uint<8>", "ap_fixed<16, 4>", "half", "std::complex<float>", "hls::vector<float, 4>"]
+)
+def test_a_large_array_costs_no_time(name: str) -> None:
+    start = time.perf_counter()
+    assert errors(includes("ap_fixed.h", "hls_half.h", "hls_vector.h", "complex") + LARGE.format(name)) == []
+    assert time.perf_counter() - start < 1.5  # some 0.05 on an idle machine; seconds if every element is worked out
+
+
+def test_the_uses_of_a_constexpr_integer_survive_although_it_has_no_value() -> None:
+    unit = parsed(includes("ap_int.h") + "constexpr ap_uint<8> first = 5; int f(int *a) { return a[first]; }")
+    (function,) = [one for one in unit.cursor.get_children() if one.spelling == "f"]
+    assert "first" in {one.spelling for one in function.walk_preorder()}
 
 
 def test_ap_int_alone_brings_what_kernels_take_for_granted() -> None:

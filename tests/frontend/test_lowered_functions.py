@@ -267,3 +267,37 @@ def test_packs_are_expanded() -> None:
         clear(p: *i32) -> void""").splitlines()
     )
     assert "(p[4] = 2) , (p[6] = 2)" in shown(text)
+
+
+def test_members_start_with_what_their_class_says() -> None:
+    text = """
+        struct reader { const int *from; int at = 0; };
+        struct counter { int n; counter() : n(5) {} };
+        template <int N> struct window { int size = N; counter count; reader in; };
+        struct late : reader {
+          int by;
+          late(const int *f, int b) : by(b) { from = f; }
+          late(const int *f) : late(f, 1) {}
+        };
+        struct span { int first = 2, last = 9; };
+        extern "C" void echo(int *a) {
+          late one(a);
+          window<4> two;
+          span three = {7}, four{.last = 8}, five;
+          a[one.at] = two.size + two.count.n + two.in.at + three.last + four.first + five.last;
+        }
+    """
+    assert shown(text) == lines("""
+        top extern-c echo(a: *i32) -> void
+          let one: late = new late(a)
+          let two: window = new window()
+          let three: span = {7, 9}
+          let four: span = {2, 8}
+          let five: span = new span()
+          a[<reader>one.at] = (((((two.size + two.count.n) + two.in.at) + three.last) + four.first) + five.last)
+        late(f: *i32) -> void : late=new late(f, 1)
+        window() -> void : size=4, count=new counter(), in={opaque<a member without an initial value>(), 0}
+        span() -> void : first=2, last=9
+        late(f: *i32, b: i32) -> void : at=0, by=b
+          *this.from = f
+        counter() -> void : n=5""")

@@ -195,3 +195,19 @@ def test_a_template_parameter_of_a_class_is_known_in_its_methods() -> None:
         extern "C" void echo(int *a) { lane<8> one; one.go(a); }
     """
     assert "  loop i < 8 step i++ @unroll(factor=4)" in shown(text)
+
+
+def test_a_function_that_an_error_made_vanish_is_told() -> None:
+    text = """
+        namespace scan {
+        int gate;
+        void gate::load(int *p) { p[0] = 1; }
+        void kept(int *p) { p[1] = 1; }
+        }
+        extern "C" void echo(int *a) { scan::kept(a); }
+    """
+    read = program(text)
+    assert [one.name for one in read.functions.values()] == ["echo", "kept"]
+    assert [(one.line, one.what) for one in read.problems] == [
+        (3, "the compiler could not read the definition that stands here")
+    ]

@@ -32,9 +32,13 @@ def traced(text: str, **given: int) -> Trace:
 
 
 def accesses(statements: str, *, before: str = "", parameters: str = PARAMETERS, **given: int) -> str:
-    """One line for each access: direction, argument, offset in bytes; the loops around it; the guards."""
+    """One line for each access: direction, argument, offset in bytes, size; the loops around it; the guards.
+
+    Below, one line for each loop that carries something along, or ends otherwise than by its count.
+    """
     found = traced(kernel(statements, before=before, parameters=parameters), **given)
-    return "\n".join(map(show_access, found.accesses))
+    loops = dict.fromkeys(loop for access in found.accesses for loop in access.loops)
+    return "\n".join([*map(show_access, found.accesses), *filter(None, map(show_loop_course, loops))])
 
 
 def operations(statements: str, *, before: str = "", parameters: str = PARAMETERS) -> str:
@@ -61,6 +65,8 @@ def show_access(access: Access) -> str:
     words = [access.direction, f"{access.argument}[{show(access.offset)}]", f"{size}{access.element_bytes} B"]
     words += [show_loop(loop) for loop in access.loops]
     words += [show_guard(guard) for guard in access.guards]
+    words += ["volatile"] if access.volatile else []
+    words += ["by request"] if access.manual else []
     if access.choice is not None:
         words.append(f"picked by {show(access.choice.selector)} from {' '.join(access.choice.alternatives)}")
     words += [f"unresolved: {access.unresolved}"] if access.unresolved else []
@@ -80,13 +86,16 @@ def show_operation(operation: StreamOperation) -> str:
 
 
 def show_loop(loop: LoopInstance) -> str:
-    trips = "?" if loop.trips is None else show(loop.trips)
-    text = f"{_counter(loop.counter)} x{trips}"
-    if loop.recurrences:
-        text += f" ({', '.join(f'{show_symbol(r.symbol)} = {show(r.first)} then {show(r.next)}' for r in loop.recurrences)})"
-    text += "".join(f" until {show(form)}" for form in loop.until)
-    text += "".join(f" exit {show(form)}" for form in loop.exits)
-    return text + (f" by {loop.data_exit_because}" if loop.data_exit is not None else "")
+    return f"{_counter(loop.counter)} x{'?' if loop.trips is None else _factor(loop.trips)}"
+
+
+def show_loop_course(loop: LoopInstance) -> str:
+    """What the loop carries along, and what ends it early; empty where there is nothing of the kind."""
+    words = [f"{show_symbol(r.symbol)} = {show(r.first)} then {show(r.next)}" for r in loop.recurrences]
+    words += [f"until {show(form)}" for form in loop.until]
+    words += [f"leaves when {show(form)}" for form in loop.exits]
+    words += [f"data of {loop.data_exit_because} ends it"] if loop.data_exit is not None else []
+    return f"{_counter(loop.counter)}: {'; '.join(words)}" if words else ""
 
 
 def show_guard(guard: Guard) -> str:
@@ -111,7 +120,7 @@ def show(form: Form) -> str:
     for monomial, factor in sorted(form.terms.items(), key=lambda item: [symbol.number for symbol in item[0]]):
         body = "*".join(show_symbol(symbol) for symbol in monomial)
         terms.append(str(factor) if not body else body if factor == 1 else f"{factor}*{body}")
-    return " + ".join(terms).replace("+ -", "- ")
+    return " + ".join(terms).replace("+ -", "- ").replace("- 1*", "- ")
 
 
 def show_symbol(symbol: Symbol) -> str:
@@ -121,7 +130,7 @@ def show_symbol(symbol: Symbol) -> str:
         case "data":
             return f"{symbol.name}[{show(symbol.at)}]" if symbol.at is not None else f"{symbol.name}[]"
         case "unknown":
-            inside = sorted({show_symbol(other) for other in symbol.depends})
+            inside = sorted({show_symbol(other) for other in symbol.depends if other.kind != "unknown"})
             return f"?({', '.join(inside)})"
         case "carried":
             return f"{symbol.name}'"
@@ -135,14 +144,20 @@ def _counter(symbol: Symbol) -> str:
     return symbol.name.replace("loop at line ", "@")
 
 
+def _factor(form: Form) -> str:
+    return show(form) if len(form.terms) < 2 else f"({show(form)})"
+
+
 def _operation(symbol: Symbol) -> str:
     operands = [show(operand) for operand in symbol.operands]
+    if symbol.name in INFIX:
+        return f"({_factor(symbol.operands[0])} {INFIX[symbol.name]} {_factor(symbol.operands[1])})"
     match symbol.name:
         case "wrap":
             return f"{'int' if operands[2] == '1' else 'uint'}{operands[1]}({operands[0]})"
         case "not":
             return f"not({operands[0]})"
-        case name if name in INFIX:
-            return f"({operands[0]} {INFIX[name]} {operands[1]})"
+        case "lookup":
+            return f"table{list(symbol.table)}[{operands[0]}]"
         case name:
             return f"{name}({', '.join(operands)})"

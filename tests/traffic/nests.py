@@ -12,10 +12,11 @@ from beatwise.memory import board
 from beatwise.model import form as forms
 from beatwise.model.access import Access, Choice, Guard, Interface, LoopInstance, Trace
 from beatwise.model.board import Board
-from beatwise.model.form import Form, Symbol, evaluate, number, symbol_form
+from beatwise.model.form import Form, Symbol, number, symbol_form
 from beatwise.model.place import Place
 from beatwise.model.traffic import Traffic, Walk
 from beatwise.traffic import measure
+from helpers.forms import evaluate
 
 _count = count(1)
 HBM, DDR = board("hbm2-32ch"), board("ddr4-2400-1ch")

@@ -5,8 +5,8 @@ from __future__ import annotations
 from beatwise.frontend import kinds, numbers
 from beatwise.frontend.conversions import converted, same
 from beatwise.frontend.initials import braced
-from beatwise.frontend.libclang import Cursor, library
-from beatwise.frontend.lowering import Callee, Lowering, operands
+from beatwise.frontend.libclang import Cursor, library, operands
+from beatwise.frontend.lowering import Callee, Lowering
 from beatwise.frontend.objects import dereferenced, this_object
 from beatwise.model.kernel import Assign, Build, Call, Expression, FunctionName, Index, Items, Literal, Opaque
 from beatwise.model.place import Place

@@ -15,6 +15,9 @@ LINES_BEFORE, LINES_AFTER = 6, 8  #: of the source, around a complaint
 #: What a complaint is not about: a template that is only declared and is used with a type local to a function.
 HARMLESS = re.compile("is used but not defined in this translation unit")
 
+#: A variable of an arbitrary-precision or stand-in type, whose value is not followed; it stays declared.
+VALUELESS = re.compile("constexpr variable '.*' must be initialized by a constant expression")
+
 MISSING = re.compile(
     r"(?:use of undeclared identifier|unknown type name|unknown class name|no (?:template|type|member) named) '(\w+)'"
 )
@@ -56,6 +59,11 @@ class Complaint:
 def matters(one: Diagnostic) -> bool:
     """Whether it is an error that changes what the compiler understood."""
     return one.severity >= ERROR and not HARMLESS.search(one.text)
+
+
+def is_lasting(one: Diagnostic) -> bool:
+    """Whether an error that no stand-in cures costs anything of what the source says."""
+    return matters(one) and not VALUELESS.match(one.text)
 
 
 def complaints(diagnostics: Iterable[Diagnostic], lines: Mapping[str, list[bytes]]) -> list[Complaint]:

@@ -2,12 +2,13 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
 from typing import Literal as Word
 
 from beatwise.frontend import kinds
 from beatwise.frontend.initials import braced
-from beatwise.frontend.libclang import Cursor, children, library
-from beatwise.frontend.lowering import EXTERN, Lowering, operands
+from beatwise.frontend.libclang import Cursor, children, library, operands
+from beatwise.frontend.lowering import EXTERN, Lowering
 from beatwise.model.kernel import (
     Declare,
     Expression,
@@ -20,7 +21,16 @@ from beatwise.model.kernel import (
     Statement,
     Variable,
 )
-from beatwise.model.types import ArrayType, IntType, RecordType, ReferenceType, StreamType, Type
+from beatwise.model.types import (
+    ArrayType,
+    IntType,
+    PointerType,
+    RecordType,
+    ReferenceType,
+    StreamType,
+    Type,
+    UnknownType,
+)
 
 IGNORED = frozenset({20, 33, 34, 35, 36, 601, *kinds.RECORDS, kinds.ENUM, kinds.FUNCTION, kinds.FUNCTION_TEMPLATE})
 
@@ -88,6 +98,8 @@ def variable(given: Lowering, cursor: Cursor, *, initial: bool = True) -> Variab
     lib = library()
     exact = lib.clang_getCursorType(cursor)
     of = given.types.of_variable(cursor, exact)
+    if given.has_errors and lib.clang_isInvalidDeclaration(cursor):
+        of = _unknown_within(of)
     scope: Word["local", "static", "global", "parameter"] = "local"
     if cursor.kind == kinds.PARAMETER:
         scope = "parameter"
@@ -98,6 +110,21 @@ def variable(given: Lowering, cursor: Cursor, *, initial: bool = True) -> Variab
     constant = given.types.is_constant(exact)
     value = initial_value(given, cursor, of) if initial else None
     return Variable(given.variable_key(cursor), given.name(cursor), of, given.place(cursor), scope, value, constant)
+
+
+def _unknown_within(of: Type) -> Type:
+    """A type that the compiler made up after an error: it takes ``int`` for what it does not know."""
+    match of:
+        case PointerType(to=to):
+            return replace(of, to=_unknown_within(to))
+        case ReferenceType(to=to):
+            return ReferenceType(_unknown_within(to))
+        case ArrayType(element=element):
+            return ArrayType(_unknown_within(element), of.count)
+        case IntType(bits=32, signed=True):
+            return UnknownType("not known after an error")
+        case _:
+            return of
 
 
 def initial_value(given: Lowering, cursor: Cursor, of: Type) -> Expression | None:

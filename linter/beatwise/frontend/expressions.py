@@ -7,8 +7,8 @@ from beatwise.frontend.calls import call
 from beatwise.frontend.conversions import converted
 from beatwise.frontend.initials import braced
 from beatwise.frontend.lambdas import closure
-from beatwise.frontend.libclang import Cursor, evaluated, library, spelling
-from beatwise.frontend.lowering import Lower, Lowering, operands
+from beatwise.frontend.libclang import Cursor, evaluated, library, operands, spelling
+from beatwise.frontend.lowering import Lower, Lowering
 from beatwise.frontend.objects import dereferenced, named, this_object
 from beatwise.model.kernel import (
     Assign,

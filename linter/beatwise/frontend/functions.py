@@ -3,11 +3,10 @@
 from __future__ import annotations
 
 from beatwise.frontend import kinds
-from beatwise.frontend.conversions import converted
 from beatwise.frontend.declarations import variable
-from beatwise.frontend.initials import braced
 from beatwise.frontend.libclang import Cursor, children, evaluated, library, usr
-from beatwise.frontend.lowering import Lowering, Scope, default_of
+from beatwise.frontend.lowering import Lowering, Scope
+from beatwise.frontend.members import implied, initial
 from beatwise.frontend.options import with_numbers
 from beatwise.frontend.statements import block, named_by, told
 from beatwise.model.kernel import Directive, Expression, Function, Variable
@@ -129,31 +128,17 @@ def _parts(given: Lowering, definition: Cursor) -> tuple[list[tuple[str, Express
             base = library().clang_getCursorReferenced(child)
         elif child.kind in kinds.EXPRESSIONS:
             if member is not None:
-                initializers.append((given.name(member), _initial(given, child, given.type(member))))
+                initializers.append((given.name(member), initial(given, child, given.type(member))))
             elif base is not None:
                 initializers.append((given.name(base), given.expression(child)))
             member = base = None
     if definition.kind == kinds.CONSTRUCTOR:
-        initializers = [*_defaults(given, definition, {name for name, _ in initializers}), *initializers]
+        record = library().clang_getCursorSemanticParent(definition)
+        named = {name for name, _ in initializers}
+        if given.name(record) not in named:  # another constructor of the class does it
+            exact = library().clang_getCursorType(record)
+            initializers = [*implied(given, exact, named, given.place(definition)), *initializers]
     return initializers, body
-
-
-def _initial(given: Lowering, cursor: Cursor, of: Type) -> Expression:
-    if cursor.kind == kinds.BRACED:
-        return braced(given, cursor, of)
-    return converted(given.expression(cursor), of, given.place(cursor))
-
-
-def _defaults(given: Lowering, constructor: Cursor, named: set[str]) -> list[tuple[str, Expression]]:
-    """The initial values that the members of a class are declared with."""
-    record = library().clang_getCursorSemanticParent(constructor)
-    found = []
-    for field in children(record):
-        if field.kind == kinds.FIELD and given.name(field) not in named:
-            value = default_of(field)
-            if value is not None:
-                found.append((given.name(field), _initial(given, value, given.type(field))))
-    return found
 
 
 def _told_parameters(given: Lowering, parameters: list[Variable]) -> list[Variable]:

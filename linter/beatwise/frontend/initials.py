@@ -6,8 +6,9 @@ import re
 
 from beatwise.frontend import kinds
 from beatwise.frontend.conversions import converted, same, wrapped
-from beatwise.frontend.libclang import Cursor, children, library
-from beatwise.frontend.lowering import Lowering, operands
+from beatwise.frontend.libclang import ClangType, Cursor, children, fields, library, operands, spelling
+from beatwise.frontend.lowering import Lowering
+from beatwise.frontend.members import member_value
 from beatwise.model.kernel import Expression, Items, Literal, Opaque
 from beatwise.model.types import ArrayType, CallableType, IntType, PointerType, RealType, RecordType, Type
 
@@ -61,13 +62,13 @@ def _items(given: Lowering, remaining: list[Cursor], of: Type) -> list[Expressio
             while remaining and (count is None or len(found) < count):
                 found.append(_item(given, remaining, element))
             return found
-        case RecordType(fields=fields, bases=bases):
+        case RecordType(fields=listed, bases=bases):
             found = []
             named: dict[str, Expression] = {}
             for base in bases:
                 if remaining:
                     found.append(_item(given, remaining, base))
-            for field in fields:
+            for field in listed:
                 if not remaining:
                     break
                 if name := _designated(remaining[-1]):
@@ -76,9 +77,22 @@ def _items(given: Lowering, remaining: list[Cursor], of: Type) -> list[Expressio
                 found.append(_item(given, remaining, field.type))
             while remaining and (name := _designated(remaining[-1])):
                 named[name] = _designation(given, remaining.pop(), fields_type(of, name))
+            if not bases and (exact := given.types.declared(of)) is not None:
+                _add_defaults(given, exact, of, found, named)
             return _ordered(found, named, of) if named else found
         case _:
             return [given.expression(remaining.pop()) for _ in range(len(remaining))]
+
+
+def _add_defaults(
+    given: Lowering, exact: ClangType, of: RecordType, found: list[Expression], named: dict[str, Expression]
+) -> None:
+    """The initial values that the class has for the fields that a list leaves out."""
+    left_out = {field.name for field in of.fields[len(found) :]} - named.keys()
+    for member in fields(exact) if left_out else ():
+        name = given.name(member)
+        if name in left_out and (value := member_value(given, member, given.place(member))) is not None:
+            named[name] = value
 
 
 def fields_type(of: RecordType, name: str) -> Type | None:
@@ -91,8 +105,6 @@ def _designated(cursor: Cursor) -> str | None:
         return None
     below = children(cursor)
     if len(below) >= 2 and below[0].kind == kinds.MEMBER_REFERENCE:
-        from beatwise.frontend.libclang import spelling
-
         return spelling(below[0])
     return None
 

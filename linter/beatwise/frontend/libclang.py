@@ -14,6 +14,7 @@ from ctypes import CFUNCTYPE, POINTER, Structure, byref, c_char_p, c_int, c_long
 from pathlib import Path
 from typing import Any
 
+from beatwise.frontend import kinds
 from beatwise.frontend.prelude import INVENTED
 
 
@@ -117,6 +118,7 @@ PROTOTYPES: dict[str, tuple[Any, list[Any]]] = {
     "clang_Cursor_isFunctionInlined": (c_uint, [Cursor]),
     "clang_CXXMethod_isStatic": (c_uint, [Cursor]),
     "clang_getCursorLinkage": (c_int, [Cursor]),
+    "clang_isInvalidDeclaration": (c_uint, [Cursor]),
     "clang_isCursorDefinition": (c_uint, [Cursor]),
     "clang_Cursor_isBitField": (c_uint, [Cursor]),
     "clang_getFieldDeclBitWidth": (c_int, [Cursor]),
@@ -228,6 +230,15 @@ def spelling(cursor: Cursor) -> str:
 def usr(cursor: Cursor) -> str:
     """The name of a declaration that is the same in every file."""
     return text(library().clang_getCursorUSR(cursor))
+
+
+def operands(cursor: Cursor) -> list[Cursor]:
+    """The expressions directly below a cursor."""
+    return [child for child in children(cursor) if child.kind in kinds.EXPRESSIONS]
+
+
+def has_body(function: Cursor) -> bool:
+    return any(child.kind in (kinds.COMPOUND, kinds.TRY) for child in children(function))
 
 
 def is_stand_in(usr: str) -> bool:

@@ -3,11 +3,13 @@
 from __future__ import annotations
 
 import re
+from collections.abc import Iterator
 
-from beatwise.frontend.libclang import Cursor
+from beatwise.frontend import kinds
+from beatwise.frontend.libclang import Cursor, children
 from beatwise.frontend.lowering import Lowering
 from beatwise.frontend.places import GivenFile
-from beatwise.model.kernel import Lost
+from beatwise.model.kernel import Lost, Problem
 
 NOISE = re.compile(
     rb"//[^\n]*|/\*.*?\*/|^[ \t]*#(?:[^\n\\]|\\\r?\n|\\.)*|\[\[.*?\]\]|\b(?:case|default)\b[^:;]*:",
@@ -27,22 +29,58 @@ def lost_between(given: Lowering, compound: Cursor, listed: list[Cursor]) -> lis
     if not given.has_errors or whole is None:
         return []
     file, start, end = whole
-    found: list[tuple[int, Lost]] = []
-    position: int | None = start + 1
+    return [
+        (index, Lost(REASON, file.place(*left)))
+        for index, gap in _gaps(given, file, start + 1, end - 1, listed)
+        if (left := _written(given, file, *gap))
+    ]
+
+
+def lost_functions(given: Lowering, file: GivenFile) -> list[Problem]:
+    """The definitions outside functions, in the file itself, that have no cursor."""
+    found = []
+    listed = [one for one in children(given.unit.root) if one.kind < kinds.MACRO_DEFINITION]
+    work = [(0, len(file.contents), listed)]
+    while work:
+        start, end, listed = work.pop()
+        here = [one for one in listed if (stretch := given.enter(one)) and stretch[0] is file]
+        for _, gap in _gaps(given, file, start, end, here):
+            left = _written(given, file, *gap)
+            if left and b"{" in file.contents[left[0] : left[1]]:
+                found.append(
+                    Problem(
+                        file.name, file.place(*left).line, "the compiler could not read the definition that stands here"
+                    )
+                )
+        for one in here:
+            stretch = given.enter(one)
+            inner = children(one) if one.kind in (kinds.NAMESPACE, kinds.LINKAGE) else []
+            if stretch and inner:
+                opening = file.contents.find(b"{", stretch[1], stretch[2])
+                if opening >= 0:
+                    work.append((opening + 1, stretch[2] - 1, inner))
+    return found
+
+
+def _gaps(
+    given: Lowering, file: GivenFile, start: int, end: int, listed: list[Cursor]
+) -> Iterator[tuple[int, tuple[int, int]]]:
+    """The stretches of text between cursors, with the number of the cursor that follows."""
+    position: int | None = start
     for index, child in enumerate(listed):
         stretch = given.enter(child)
         if stretch is None or stretch[0] is not file:
             position = None
             continue
         if position is not None and position < stretch[1]:
-            found += [(index, one) for one in _statements(given, file, position, stretch[1])]
+            yield index, (position, stretch[1])
         position = max(stretch[2], position or 0)
     if position is not None:
-        found += [(len(listed), one) for one in _statements(given, file, position, end - 1)]
-    return found
+        yield len(listed), (position, end)
 
 
-def _statements(given: Lowering, file: GivenFile, start: int, end: int) -> list[Lost]:
+def _written(given: Lowering, file: GivenFile, start: int, end: int) -> tuple[int, int] | None:
+    """What is written in a gap besides comments, preprocessor lines, inactive regions and uses of macros."""
     text = bytearray(file.contents[start:end])
     for first, last in given.skipped.get(file.name, ()):
         _blank(text, first - start, last - start)
@@ -53,8 +91,8 @@ def _statements(given: Lowering, file: GivenFile, start: int, end: int) -> list[
             _blank(text, use.start(), use.end())
     plain = bytes(text).replace(b";", b" ")
     if not WORD.search(plain):
-        return []
-    return [Lost(REASON, file.place(start + len(plain) - len(plain.lstrip()), start + len(plain.rstrip())))]
+        return None
+    return start + len(plain) - len(plain.lstrip()), start + len(plain.rstrip())
 
 
 def _blank(text: bytearray, start: int, end: int) -> None:

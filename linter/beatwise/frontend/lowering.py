@@ -9,16 +9,18 @@ from dataclasses import dataclass, field
 
 from beatwise.frontend import kinds
 from beatwise.frontend.libclang import (
-    MACRO_BIT,
     Cursor,
     TranslationUnit,
     children,
     evaluated,
+    has_body,
     is_stand_in,
     library,
+    operands,
     spelling,
     usr,
 )
+from beatwise.frontend.members import sets_members
 from beatwise.frontend.places import GivenFile, Places
 from beatwise.frontend.types import POINTER, RECORD, Types
 from beatwise.model.kernel import Directive, Expression, FunctionName, Opaque, Statement, Variable
@@ -273,8 +275,7 @@ class Lowering:
             return False
         if definition.kind != kinds.CONSTRUCTOR or lib.clang_Cursor_getNumArguments(definition):
             return True
-        record = lib.clang_getCursorSemanticParent(definition)
-        return not any(one.kind == kinds.FIELD and default_of(one) is not None for one in children(record))
+        return not sets_members(lib.clang_getCursorType(lib.clang_getCursorSemanticParent(definition)))
 
     # --------------------------------------------------------------------------------------------------- directives
 
@@ -314,40 +315,6 @@ class Lowering:
             return int(library().clang_getEnumConstantDeclValue(declaration))
         value = self.folded(declaration)
         return value if isinstance(value, int) else None
-
-
-def operands(cursor: Cursor) -> list[Cursor]:
-    """The expressions directly below a cursor."""
-    return [child for child in children(cursor) if child.kind in kinds.EXPRESSIONS]
-
-
-def default_of(field: Cursor) -> Cursor | None:
-    """The initial value a member is declared with."""
-    lib = library()
-    parts = operands(field)
-    if not parts:
-        return None
-    extent = lib.clang_getCursorExtent(field)
-    name = lib.clang_getCursorLocation(field).raw
-    last = lib.clang_getCursorExtent(parts[-1])
-    if lib.clang_Cursor_isBitField(field) and len(parts) == 1 or last.begin <= name or last.end > extent.end:
-        return None
-    return None if _is_bound(given_type=lib.clang_getCursorType(field).kind, parts=parts, name=name) else parts[-1]
-
-
-def _is_bound(given_type: int, parts: list[Cursor], name: int) -> bool:
-    """Whether all expressions in a member's declaration are bounds of its array."""
-    if given_type != 112:
-        return False
-    return parts[-1].kind != kinds.BRACED
-
-
-def has_body(function: Cursor) -> bool:
-    return any(child.kind in (kinds.COMPOUND, kinds.TRY) for child in children(function))
-
-
-def in_macro(cursor: Cursor) -> bool:
-    return bool(library().clang_getCursorExtent(cursor).begin & MACRO_BIT)
 
 
 Lower = Callable[[Lowering, Cursor], Expression]

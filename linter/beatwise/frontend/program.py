@@ -14,6 +14,7 @@ from beatwise.frontend.expressions import LOWER
 from beatwise.frontend.functions import function, is_extern_c
 from beatwise.frontend.headers import INCLUDE_DIRECTORY, header_files
 from beatwise.frontend.libclang import Cursor, TranslationUnit, children, library, location, usr
+from beatwise.frontend.lost import lost_functions
 from beatwise.frontend.lowering import Lowering
 from beatwise.frontend.mentions import mentions
 from beatwise.frontend.parse import virtual_path
@@ -107,7 +108,10 @@ def _read(
                 directives[file.name] = pragmas_in(texts[file.name], file.name)
         skipped = _skipped(unit, given)
         active = {file: _active(found, skipped.get(file, [])) for file, found in directives.items()}
-        units.append(Lowering(unit, given, path, INCLUDE_DIRECTORY, number, active, skipped, bool(made), EXPRESSIONS))
+        one = Lowering(unit, given, path, INCLUDE_DIRECTORY, number, active, skipped, bool(made), EXPRESSIONS)
+        if one.has_errors and not any(problem.file == name for problem in problems):
+            problems += lost_functions(one, given[path])
+        units.append(one)
     definitions = [(one, cursor) for one in units for cursor in _survey(one)]
     linked = {usr(cursor): (one, cursor) for one, cursor in reversed(definitions)}
     for one in units:
@@ -227,7 +231,7 @@ def _is_mapped(directive: Directive) -> bool:
 
 
 def _holds_mapped(given: Lowering, cursor: Cursor) -> bool:
-    """Whether a memory-mapped interface directive is written in a function, or made by a macro in its outermost block."""
+    """Whether a memory-mapped interface directive is written in a function, or made by a macro."""
     stretch = given.enter(cursor)
     if stretch is not None and any(_is_mapped(one) for one in given.directives_in(stretch, claim=False)):
         return True

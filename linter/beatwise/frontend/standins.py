@@ -17,7 +17,7 @@ from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from typing import Literal as Word
 
-from beatwise.frontend.complaints import ERROR, WARNING, Complaint, Diagnostic, complaints, matters
+from beatwise.frontend.complaints import ERROR, WARNING, Complaint, Diagnostic, complaints, is_lasting
 from beatwise.frontend.headers import INCLUDE_DIRECTORY, header_files
 from beatwise.frontend.homes import homes
 from beatwise.frontend.prelude import INVENTED, Draft, Entry, EntryKind, MemberKind
@@ -83,7 +83,7 @@ def stand_in(parse: Parse, texts: Mapping[str, str], limit: int = 12) -> StandIn
         if not work.repair(diagnostics):
             break
         diagnostics = parse(work.draft.render(), dict(work.headers))
-    left = tuple(one for one in diagnostics if matters(one))
+    left = tuple(one for one in diagnostics if is_lasting(one))
     return StandIns(work.draft.render(), work.headers, tuple(work.inventions.values()), left)
 
 
@@ -243,7 +243,8 @@ class _Work:
             case "variable":
                 return self._invent(one.name, Entry("variable"), "constant", one)
             case _:
-                return self._invent(one.name, Entry("constant"), "constant", one)
+                kind: EntryKind = "bound" if self._is_argument(one.name) else "constant"
+                return self._invent(one.name, Entry(kind), "constant", one)
 
     def _members(self, one: Complaint) -> bool:
         """A member that a stand-in lacks."""
@@ -265,7 +266,14 @@ class _Work:
         if not NEEDS_VALUE.search(one.text):
             return False
         here = self._on_line(one).values()
-        loose = _of(here, "constant") or _of(self.draft.names.values(), "constant") or _of(here, "variable")
+        named = set(re.findall(r"\w+", " ".join(re.findall(r"\[[^]]*\]|<[^<>]*>|\bcase\b[^:]*", one.line))))
+        inside = [entry for name, entry in self._on_line(one).items() if name in named]
+        loose = (
+            _of(inside, "constant")
+            or _of(here, "constant")
+            or _of(self.draft.names.values(), "constant")
+            or _of(here, "variable")
+        )
         return _make(loose, "bound")
 
     def _refit(self, one: Complaint) -> bool:
@@ -297,6 +305,9 @@ class _Work:
             case text if "conditional expression is ambiguous" in text or "incompatible operand types" in text:
                 named = set(re.findall(r"\w+", text))
                 plain = [entry for name, entry in self.draft.names.items() if name in named and not entry.members]
+                return _make(_of(plain, "type"), "number type")
+            case text if "implicitly-deleted default constructor" in text or "union member" in text:
+                plain = [entry for name, entry in self.draft.names.items() if self._is_in_union(name)]
                 return _make(_of(plain, "type"), "number type")
             case text if re.search("subscripted value is|cannot assign to|reference base type|indirection req", text):
                 used = r"\b(\w+)\s*(?:\[|\.|->|[-+*/|&^]?=[^=]|\+\+|--)"
@@ -383,6 +394,13 @@ class _Work:
         """Whether the name is in an array bound that is part of a parameter's or reference's type."""
         bound = rf"\]\s*\[[^\]]*\b{name}\b|\(\s*&\s*\w+\s*\)\s*\[[^\]]*\b{name}\b"
         return any(re.search(bound, text) for text in self.texts)
+
+    def _is_argument(self, name: str) -> bool:
+        """Whether the name is in a template argument: without a value a recursion over templates would not end."""
+        return any(re.search(rf"\w\s*<[\w\s,:*+/-]*\b{name}\b[\w\s,:*+/-]*>", text) for text in self.texts)
+
+    def _is_in_union(self, name: str) -> bool:
+        return any(re.search(rf"\bunion\b[^{{}}]*\{{[^{{}}]*\b{name}\b", text) for text in self.texts)
 
     def _is_declared(self, name: str) -> bool:
         """Whether the source seems to declare the type, so that it is missing only for another error's sake."""

@@ -8,9 +8,9 @@ from dataclasses import replace
 from beatwise.frontend import kinds
 from beatwise.frontend.declarations import declared
 from beatwise.frontend.heads import for_parts, if_parts
-from beatwise.frontend.libclang import Cursor, children, library, spelling
+from beatwise.frontend.libclang import Cursor, children, library, operands, spelling
 from beatwise.frontend.lost import lost_between
-from beatwise.frontend.lowering import Lowering, operands
+from beatwise.frontend.lowering import Lowering
 from beatwise.frontend.options import with_numbers
 from beatwise.frontend.ranges import range_item, range_loop
 from beatwise.frontend.switches import switch
@@ -86,9 +86,14 @@ def block(given: Lowering, cursor: Cursor) -> Block:
     body: list[Statement] = []
     listed = children(cursor)
     lost = lost_between(given, cursor, listed)
+    label = ""
     for index, child in enumerate(listed):
         body.extend(one for at, one in lost if at == index)
-        body.extend(statements(given, child))
+        found = statements(given, child)
+        if label and len(found) == 1 and isinstance(found[0], Loop):  # a pragma of a macro stands between them
+            found = [_labelled(given, found[0], label)]
+        label = spelling(child) if child.kind == kinds.LABEL and not found else ""
+        body.extend(found)
     body.extend(one for at, one in lost if at == len(listed))
     mine = [*given.scope.directives, *given.directives_in(given.enter(cursor))]
     mine = sorted((with_numbers(one, given.constant) for one in mine), key=lambda one: one.place.offset)
@@ -245,11 +250,14 @@ def _label(given: Lowering, cursor: Cursor) -> list[Statement]:
     below = children(cursor)
     found = statements(given, below[-1]) if below else []
     if len(found) == 1 and isinstance(found[0], Loop):
-        label = spelling(cursor)
-        loop = found[0]
-        outside = tuple(given.scope.labels.get(label, ()))
-        return [replace(loop, label=loop.label or label, directives=(*loop.directives, *outside))]
+        return [_labelled(given, found[0], spelling(cursor))]
     return found
+
+
+def _labelled(given: Lowering, loop: Loop, label: str) -> Loop:
+    """A loop with its label, and the directives that an external script has for it."""
+    outside = tuple(given.scope.labels.get(label, ()))
+    return replace(loop, label=loop.label or label, directives=(*loop.directives, *outside))
 
 
 # --------------------------------------------------------------------------------------------------------- branches

@@ -160,6 +160,11 @@ class Types:
         self._headers = headers
         self._known: dict[int, Type] = {}
         self._open: set[int] = set()
+        self._records: dict[str, ClangType] = {}
+
+    def declared(self, of: RecordType) -> ClangType | None:
+        """The compiler's type that a record was read from."""
+        return self._records.get(of.key)
 
     def of(self, cursor: Cursor) -> Type:
         """The type of a declaration or expression."""
@@ -277,6 +282,7 @@ class Types:
         if identity in self._open:
             return RecordType(key, name, size, ())
         self._open.add(identity)
+        self._records[key] = given
         try:
             members, exact, bit_fields = self._fields(given)
             listed = children(declaration)

@@ -165,7 +165,7 @@ def _closing_angle(after: str) -> int | None:
             depth -= 1
             if not depth:
                 return at
-        elif not ARGUMENTS.fullmatch(after[at]):
+        elif not ARGUMENTS.fullmatch(after[at]) or after.startswith("&&", at):
             return None
         at += 1
     return None

@@ -8,7 +8,7 @@ the same way are equal, so that ``8 * (k / 8) + k % 8`` is ``k``. Whole numbers 
 from __future__ import annotations
 
 from collections.abc import Callable, Iterable, Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from itertools import count
 from typing import Literal
 
@@ -22,7 +22,7 @@ _numbers = count(1)
 
 @dataclass(frozen=True, slots=True, eq=False)
 class Symbol:
-    """A quantity that a form is made of; equal only to itself.
+    """A quantity that a form is made of. Two with one ``number`` are the same, even where one knows more of itself.
 
     ``counter``: 0, 1, 2, ... of the loop ``loop``. ``parameter``: a scalar argument of the top function. ``data``: read
     from memory, a stream or a table (``name`` says which, ``at`` the byte offset it was read from, when known); drawn anew in every iteration of ``loops``.
@@ -43,6 +43,12 @@ class Symbol:
     table: tuple[int, ...] = ()
     reason: str | None = None
     at: Form | None = None
+
+    def __eq__(self, other: object) -> bool:
+        return self is other or (isinstance(other, Symbol) and self.number == other.number)
+
+    def __hash__(self) -> int:
+        return self.number
 
     def __repr__(self) -> str:
         if self.kind == "operation":
@@ -139,10 +145,10 @@ class Form:
             if at > 1:
                 return None
             if at == 1:
-                rest = tuple(other for other in monomial if other is not symbol)
+                rest = tuple(other for other in monomial if other != symbol)
                 terms[rest] = terms.get(rest, 0) + factor
             if any(
-                other.kind != "counter" and symbol in _leaves_of(other) for other in monomial if other is not symbol
+                other.kind != "counter" and symbol in _leaves_of(other) for other in monomial if other != symbol
             ):
                 return None
         return Form(terms)
@@ -196,6 +202,11 @@ def symbol_form(symbol: Symbol) -> Form:
     return Form({(symbol,): 1})
 
 
+def renumbered(symbol: Symbol, high: int | None) -> Symbol:
+    """A counter like this one that is known to end at ``high``."""
+    return replace(symbol, number=next(_numbers), high=high)
+
+
 def counter(name: str, loop: int) -> Symbol:
     """The counter of a loop: 0 in its first iteration."""
     return Symbol("counter", name, next(_numbers), low=0, loop=loop)
@@ -240,25 +251,42 @@ def opaque(reason: str, sources: Iterable[Form]) -> Symbol:
     return Symbol("unknown", "~", next(_numbers), depends=depends, reason=None if depends else reason)
 
 
-_operations: dict[tuple[str, tuple[Form, ...], tuple[int, ...]], Symbol] = {}
+_operations: dict[tuple[str, tuple[Form, ...], tuple[int, ...]], int] = {}
 
 
 def operation(name: str, *operands: Form, table: tuple[int, ...] = ()) -> Form:
-    """An operation that is no polynomial, unsimplified; the same name and operands give the same symbol."""
+    """An operation that is no polynomial, unsimplified; the same name and operands give equal symbols."""
     key = (name, operands, table)
-    found = _operations.get(key)
-    if found is None:
-        low, high = _operation_bounds(name, operands, table)
-        found = Symbol("operation", name, next(_numbers), operands=operands, table=table, low=low, high=high)
-        _operations[key] = found
-    return symbol_form(found)
+    known = _operations.get(key)
+    if known is None:
+        known = _operations[key] = next(_numbers)
+    low, high = _operation_bounds(name, operands, table)
+    return symbol_form(Symbol("operation", name, known, operands=operands, table=table, low=low, high=high))
 
 
 # ------------------------------------------------------------------------------------------------------- bounds
 
 
 def bounds(form: Form) -> tuple[int | None, int | None]:
-    """The least and the greatest value the form can take, by its symbols' own bounds; None where there is none."""
+    """The least and the greatest value the form can take, by its symbols' own bounds; None where there is none.
+
+    >>> k = symbol_form(counter("k", 1))
+    >>> bounds(k * 2 + 1), bounds(mask(k, 3))
+    ((1, None), (0, 7))
+    """
+    low, high = _bounds_by_terms(form)
+    split = _remainder_in(form) if len(form.terms) > 1 else None
+    if split is not None:
+        rest, factor, least, most = split
+        rest_low, rest_high = bounds(rest)
+        ends = (factor * least, factor * most)
+        lows = [end for end in (low, None if rest_low is None else rest_low + min(ends)) if end is not None]
+        highs = [end for end in (high, None if rest_high is None else rest_high + max(ends)) if end is not None]
+        low, high = max(lows, default=None), min(highs, default=None)
+    return low, high
+
+
+def _bounds_by_terms(form: Form) -> tuple[int | None, int | None]:
     low: int | None = 0
     high: int | None = 0
     for monomial, factor in form.terms.items():
@@ -271,6 +299,35 @@ def bounds(form: Form) -> tuple[int | None, int | None]:
         low = None if low is None or a is None else low + factor * a
         high = None if high is None or b is None else high + factor * b
     return low, high
+
+
+def _remainder_in(form: Form) -> tuple[Form, int, int, int] | None:
+    """The form as a rest plus a factor times a remainder ``x - by * (x / by)``: rest, factor, the remainder's bounds.
+
+    ``x`` may itself be a quotient, as in ``k / 4 - 3 * (k / 12)``.
+    """
+    linear = [(monomial[0], factor) for monomial, factor in form.terms.items() if len(monomial) == 1]
+    quotients = [(s, f) for s, f in linear if s.kind == "operation" and s.name in ("floordiv", "div")]
+    for symbol, coefficient in quotients:
+        value, divisor = symbol.operands
+        by = divisor.known
+        if by is None or by <= 1:
+            continue
+        wholes = [(value, by)]
+        for finer, _ in quotients:
+            step = finer.operands[1].known
+            if finer is symbol or not (symbol.name == finer.name == "floordiv"):
+                continue
+            if finer.operands[0] == value and step and by % step == 0:
+                wholes.append((symbol_form(finer), by // step))
+        for whole, times in wholes:
+            if coefficient % times:
+                continue
+            factor = -coefficient // times
+            rest = form - (whole - symbol_form(symbol) * times) * factor
+            if len(rest.terms) < len(form.terms):
+                return rest, factor, 0 if symbol.name == "floordiv" else 1 - times, times - 1
+    return None
 
 
 def _product(
@@ -286,7 +343,7 @@ def _product(
 
 
 def _operation_bounds(name: str, operands: tuple[Form, ...], table: tuple[int, ...]) -> tuple[int | None, int | None]:
-    if name in ("lt", "le", "eq", "ne", "not", "and?", "or?"):
+    if name in ("lt", "eq", "ne", "not", "and?", "or?"):
         return 0, 1
     if name == "lookup" and table:
         return min(table), max(table)
@@ -298,12 +355,6 @@ def _operation_bounds(name: str, operands: tuple[Form, ...], table: tuple[int, .
             return (None if low is None else low // divisor), (None if high is None else high // divisor)
         if low is not None and low >= 0 and ranges[1][0] is not None and ranges[1][0] >= 0:
             return 0, high
-    if name == "mod":
-        divisor_high = ranges[1][1]
-        if ranges[0][0] is not None and ranges[0][0] >= 0 and divisor_high is not None:
-            return 0, divisor_high - 1
-        if ranges[0][0] is not None and ranges[0][0] >= 0:
-            return 0, ranges[0][1]
     if name in ("min", "max"):
         pick: Callable[[Iterable[int]], int] = min if name == "min" else max
         lows = [low for low, _ in ranges if low is not None]
@@ -431,13 +482,14 @@ def maximum(left: Form, right: Form) -> Form:
 
 
 def less(left: Form, right: Form) -> Form:
-    """1 where ``left < right``, else 0."""
+    """1 where ``left < right``, else 0. A number stands alone on its side, so that opposites of opposites are equal."""
     low, high = bounds(left - right)
     if high is not None and high < 0:
         return ONE
     if low is not None and low >= 0:
         return ZERO
-    return operation("lt", left, right)
+    moved = right.constant if left.known is not None else left.constant
+    return operation("lt", left - moved, right - moved)
 
 
 def equal(left: Form, right: Form) -> Form:
@@ -447,14 +499,16 @@ def equal(left: Form, right: Form) -> Form:
         return ONE
     if (low is not None and low > 0) or (high is not None and high < 0):
         return ZERO
-    return operation("eq", left, right)
+    if left.known is not None:
+        left, right = right, left
+    return operation("eq", left - left.constant, right - left.constant)
 
 
 def negation(condition: Form) -> Form:
     """1 where the condition is 0, else 0."""
-    known = condition.known
-    if known is not None:
-        return number(0 if known else 1)
+    decided = _decided(condition)
+    if decided is not None:
+        return number(1 - decided)
     if len(condition.terms) == 1:
         ((monomial, factor),) = condition.terms.items()
         if factor == 1 and len(monomial) == 1 and monomial[0].kind == "operation":
@@ -470,6 +524,14 @@ def negation(condition: Form) -> Form:
             if symbol.name == "ne":
                 return operation("eq", *symbol.operands)
     return operation("not", condition)
+
+
+def _decided(form: Form) -> int | None:
+    """1 where the bounds say that the form is not 0, 0 where it is."""
+    low, high = bounds(form)
+    if low == high == 0:
+        return 0
+    return 1 if (low is not None and low > 0) or (high is not None and high < 0) else None
 
 
 def _is_truth(form: Form) -> bool:
@@ -500,8 +562,9 @@ def either(left: Form, right: Form) -> Form:
 
 def truth(form: Form) -> Form:
     """1 where the form is not 0."""
-    if form.known is not None:
-        return number(1 if form.known else 0)
+    decided = _decided(form)
+    if decided is not None:
+        return number(decided)
     return form if _is_truth(form) else negation(equal(form, ZERO))
 
 
@@ -574,16 +637,14 @@ def _substituted(symbol: Symbol, values: Mapping[Symbol, Form], memo: dict[Symbo
         result = values[symbol]
     elif symbol.kind == "operation":
         operands = [substitute(operand, values, memo) for operand in symbol.operands]
-        result = symbol_form(symbol) if tuple(operands) == symbol.operands else rebuilt(symbol, operands)
+        same = all(new is old for new, old in zip(operands, symbol.operands, strict=True))
+        result = symbol_form(symbol) if same else rebuilt(symbol, operands)
     elif symbol.kind in ("data", "unknown") and any(other in values for other in symbol.depends):
         depends: frozenset[Symbol] = frozenset()
         for other in symbol.depends:
             depends |= values[other].leaves() if other in values else frozenset((other,))
         at = substitute(symbol.at, values, memo) if symbol.at is not None else None
-        result = symbol_form(
-            Symbol(symbol.kind, symbol.name, symbol.number, symbol.place, symbol.low, symbol.high,
-                   symbol.loop, symbol.loops, (), depends, (), symbol.reason, at)
-        )  # fmt: skip
+        result = symbol_form(replace(symbol, depends=depends, at=at))
     else:
         result = symbol_form(symbol)
     memo[symbol] = result
@@ -664,29 +725,3 @@ PLAIN: dict[str, Callable[..., int]] = {
     "shl": _shift_left,
     "shr": _shift_right,
 }  #: what each operation computes on plain numbers
-
-
-def evaluate(form: Form, value_of: Callable[[Symbol], int], memo: dict[Symbol, int] | None = None) -> int:
-    """The form's value; ``value_of`` gives each symbol that is no operation. ``memo`` keeps symbols already computed."""
-    memo = {} if memo is None else memo
-    total = 0
-    for monomial, factor in form.terms.items():
-        product = factor
-        for symbol in monomial:
-            product *= _value(symbol, value_of, memo)
-        total += product
-    return total
-
-
-def _value(symbol: Symbol, value_of: Callable[[Symbol], int], memo: dict[Symbol, int]) -> int:
-    found = memo.get(symbol)
-    if found is None:
-        if symbol.kind != "operation":
-            found = value_of(symbol)
-        elif symbol.name == "lookup":
-            index = evaluate(symbol.operands[0], value_of, memo)
-            found = symbol.table[index] if 0 <= index < len(symbol.table) else 0
-        else:
-            found = PLAIN[symbol.name](*[evaluate(operand, value_of, memo) for operand in symbol.operands])
-        memo[symbol] = found
-    return found

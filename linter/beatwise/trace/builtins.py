@@ -10,6 +10,7 @@ from beatwise.model.form import (
     ZERO,
     Form,
     counter,
+    renumbered,
     data,
     div,
     floordiv,
@@ -260,7 +261,7 @@ class Builtins(Evaluator):
         symbol = counter("copied", number_)
         known = elements.known
         if known is not None:
-            symbol = replace(symbol, high=max(0, known - 1))
+            symbol = renumbered(symbol, max(0, known - 1))
         self.record.loops[number_] = LoopInstance(
             number_, symbol, place, self.frame.function.name, elements, kind="copy", pipeline=True
         )

@@ -20,6 +20,7 @@ from beatwise.model.form import (
     mod,
     negation,
     number,
+    renumbered,
     substitute,
     symbol_form,
     unknown,
@@ -229,7 +230,7 @@ class Looper(Caller):
             trips_early = self._early_trips(statement, entry, moving, early, provisional)
             if trips_early is not None:
                 high = bounds(trips_early)[1]
-                count_from = replace(provisional, high=None if high is None else max(0, high - 1))
+                count_from = renumbered(provisional, None if high is None else max(0, high - 1))
                 swap = {provisional: symbol_form(count_from)}
                 memo: dict[Symbol, Form] = {}
                 guards = entry.guards
@@ -275,7 +276,7 @@ class Looper(Caller):
         if trips.count is not None:
             high = bounds(trips.count)[1]
             if high is not None and (count_from.high is None or high - 1 < count_from.high):
-                final = replace(count_from, high=max(0, high - 1))
+                final = renumbered(count_from, max(0, high - 1))
         if final is not count_from:
             values = {symbol: substitute(form, {count_from: symbol_form(final)}) for symbol, form in values.items()}
             values[count_from] = symbol_form(final)
@@ -375,18 +376,16 @@ class Looper(Caller):
     ) -> Form | None:
         """``for (unsigned i = 7; i < 8; --i)``: how often until an unsigned counter passes zero and fails the test."""
         for m, form in early:
-            slope, first = form.coefficient(provisional), m.first().known
-            if not isinstance(m.kind, IntType) or m.kind.signed or first is None or slope is None:
+            slope = form.coefficient(provisional)
+            step = slope.known if slope is not None else None
+            if not isinstance(m.kind, IntType) or m.kind.signed or step is None or step >= 0:
                 continue
-            step = slope.known
-            if step is None or step >= 0:
-                continue
-            turns = first // -step + 1
+            turns = floordiv(m.first(), number(-step)) + 1
             trial = entry.copy()
             trial.written = None
-            self._set(trial, m.cell, Number(number((first + step * turns) % (1 << m.kind.bits))))
-            if self.condition(condition, trial).known == 0:
-                return number(turns)
+            self._set(trial, m.cell, Number(m.first() + turns * step + (1 << m.kind.bits)))
+            if not self.condition(condition, trial).known:
+                return turns
         return None
 
     def _wrapping(self, condition: Form, symbol: Symbol) -> Form | None:
@@ -555,7 +554,7 @@ class Looper(Caller):
             top = bounds(trips.count)[1] if trips.count is not None else None
             made = data if depends else None
             symbol = (
-                made("the trips", statement.place, self.open, low=0, high=top, depends=depends)
+                made(_decider(depends), statement.place, self.open, low=0, high=top, depends=depends)
                 if made is not None
                 else replace(unknown("trips that are not known", statement.place, self.open), low=0, high=top)
             )
@@ -626,6 +625,11 @@ def _is_computed(
     held = (hints.get(root, {}).get(path) for root, path in changed if ANY in path)
     stored = [v.form.leaves() for v in held if isinstance(v, Number)]
     return any(leaves and not any(s.kind == "data" or s.reason for s in leaves) for leaves in stored)
+
+
+def _decider(drawn: frozenset[Symbol]) -> str:
+    """The name of the data that is read first."""
+    return min(drawn, key=lambda symbol: symbol.number).name
 
 
 def _argument(spot: Spot) -> str | Root | None:

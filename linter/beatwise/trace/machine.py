@@ -282,8 +282,11 @@ class Machine:
         )
 
     def _lost_access(self, spot: LostSpot, direction: str, place: Place, state: State) -> None:
-        """An access whose argument is known to be one, but whose address is lost, is told as unresolved."""
-        if spot.argument is None or self.scouting:
+        """An access whose address is lost is told as unresolved; one whose argument is lost, too, is noted."""
+        if self.scouting:
+            return
+        if spot.argument is None:
+            self.notes.append((place, f"a {direction} is left out: {spot.reason}"))
             return
         kept = MemorySpot(spot.argument, spot.depends, 1, VoidType())
         self._access(kept, direction, place, state)

@@ -164,7 +164,7 @@ def member(spot: Spot, name: str, kind: Type) -> Spot:
 
 def depending(*forms: Form) -> Form:
     """A form of no known value that depends on all of these."""
-    return symbol_form(opaque("no value", forms))
+    return symbol_form(opaque("a real number, or another value that is not followed", forms))
 
 
 def choose(condition: Form, yes: Value | None, no: Value | None, place: Place) -> Value:

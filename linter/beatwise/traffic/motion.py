@@ -11,7 +11,7 @@ from beatwise.model.form import Form, Symbol
 def varies(form: Form, loop: LoopInstance) -> bool:
     """Whether the form may differ between two iterations of one run of ``loop``."""
     return any(
-        symbol is loop.counter
+        symbol == loop.counter
         or loop.number in symbol.loops
         or (symbol.kind == "carried" and symbol.loop == loop.number)
         for symbol in form.leaves()

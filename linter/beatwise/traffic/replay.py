@@ -12,7 +12,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass, field
 
 from beatwise.model.access import Access, LoopInstance
-from beatwise.model.form import Form, Symbol, redrawn_in
+from beatwise.model.form import Form, Symbol, negation, redrawn_in
 from beatwise.traffic.compiled import Values, compiled
 
 STEPS_AT_MOST = 12_000  #: iterations of innermost loops that are walked through for one access
@@ -95,7 +95,8 @@ class Walker:
         self.guards = [g.condition for g in access.guards if not g.leaves or not _by_data(g.condition)]
         self.free = [g for g in self.guards if not _by_data(g)]
         self.drawn = [g for g in self.guards if _by_data(g)]
-        self.coins = {symbol for g in self.drawn for symbol in _comparisons(g)}
+        self.coins = dict(coin for g in self.drawn for symbol in _comparisons(g) for coin in _sides(symbol))
+        self.coin_loops = {coin: _tossed_in(coin) for coin in self.coins}
         self.by_loop = _drawn_in(access)
 
     def walk(self) -> Seen:
@@ -175,12 +176,11 @@ class Walker:
         for guard in self.free:
             if not compiled(guard)(values):
                 return
-        for guard in self.drawn:
-            for coin in self.coins:
-                if coin not in values:
-                    values[coin] = self.flip(coin)
-            if not compiled(guard)(values):
-                return
+        for coin, (first, turned) in self.coins.items():
+            if coin not in values:
+                values[coin] = self.flip(first) ^ turned
+        if not all(compiled(guard)(values) for guard in self.drawn):
+            return
         self.seen.take(compiled(self.access.offset)(values), inner)
 
     def _redraw(self, loop: LoopInstance) -> None:
@@ -188,12 +188,13 @@ class Walker:
         values = self.values
         for symbol in self.by_loop.get(loop.number, ()):
             values.pop(symbol, None)
-        for coin in self.coins:
-            values.pop(coin, None)
+        for coin, loops in self.coin_loops.items():
+            if loop.number in loops:
+                values.pop(coin, None)
 
     def flip(self, symbol: Symbol) -> int:
         """An even chance, the same for the same iteration."""
-        return (self._mixed(symbol) >> 13) & 1
+        return self._mixed(symbol) & 1
 
     def draw(self, symbol: Symbol) -> int:
         """A value for what only the data knows."""
@@ -205,10 +206,13 @@ class Walker:
         return low + self._mixed(symbol) % max(1, high - low + 1)
 
     def _mixed(self, symbol: Symbol) -> int:
-        state = symbol.number * 0x9E3779B97F4A7C15
+        """64 bits that look random (the mixing steps of SplitMix64: Steele, Lea and Flood, OOPSLA 2014)."""
+        state = symbol.number
         for loop in self.access.loops:
-            state = (state ^ self.values.get(loop.counter, 0)) * 0xBF58476D1CE4E5B9 & 0xFFFFFFFFFFFFFFFF
-            state ^= state >> 29
+            state = (state + self.values.get(loop.counter, 0) + 1) * 0x9E3779B97F4A7C15 & 0xFFFFFFFFFFFFFFFF
+            state = (state ^ state >> 30) * 0xBF58476D1CE4E5B9 & 0xFFFFFFFFFFFFFFFF
+            state = (state ^ state >> 27) * 0x94D049BB133111EB & 0xFFFFFFFFFFFFFFFF
+            state ^= state >> 31
         return state
 
 
@@ -241,6 +245,18 @@ def _comparisons(form: Form) -> set[Symbol]:
         elif _by_data(Form({(symbol,): 1})):
             found.add(symbol)
     return found
+
+
+def _sides(test: Symbol) -> list[tuple[Symbol, tuple[Symbol, int]]]:
+    """A test and its opposite, each with the older of the two and whether it is the other one."""
+    opposite = negation(Form({(test,): 1})).symbols() | {test}
+    first = min(opposite, key=lambda symbol: symbol.number)
+    return [(symbol, (first, int(symbol is not first))) for symbol in opposite]
+
+
+def _tossed_in(coin: Symbol) -> set[int]:
+    """The loops of which a new iteration may turn the test's outcome."""
+    return {loop for symbol in Form({(coin,): 1}).leaves() for loop in redrawn_in(symbol)}
 
 
 def _drawn_in(access: Access) -> dict[int, set[Symbol]]:

@@ -11,7 +11,7 @@ from dataclasses import dataclass, replace
 from math import gcd
 
 from beatwise.model.access import Access, LoopInstance
-from beatwise.model.form import Form, Symbol, bounds, number, redrawn_in
+from beatwise.model.form import Form, Symbol, both, bounds, number, redrawn_in, symbol_form
 from beatwise.model.traffic import Basis, Pattern, Walk
 from beatwise.traffic.compiled import compiled
 from beatwise.traffic.replay import Walker
@@ -72,6 +72,36 @@ def _taken_to_run(access: Access, sizes: Mapping[Symbol, int]) -> tuple[Access, 
         if factor < 0 and symbol in unknown
     }
     return replace(access, guards=guards), {**sizes, **dict.fromkeys(taken_off, 0)}
+
+
+def _leaves(access: Access, loop: LoopInstance) -> bool:
+    """Whether the access runs only in the iteration that ends the loop."""
+    if not loop.exits:
+        return False
+    inside = [guard.condition for guard in access.guards if loop.number in guard.loops]
+    condition = number(1)
+    for part in inside:
+        condition = both(condition, part)
+        if condition in loop.exits and _by_data(condition):
+            return True
+    return False
+
+
+def _last_of(access: Access, left: Sequence[LoopInstance], given: Mapping[str, int]) -> Walk:
+    """The walk of an access that runs once for each time that ``left`` are run through, at a place that data decides."""
+    numbers = {loop.number for loop in left}
+    own = {loop.counter for loop in left} | {r.symbol for loop in left for r in loop.recurrences}
+    outer = replace(
+        access,
+        loops=tuple(loop for loop in access.loops if loop.number not in numbers),
+        guards=tuple(guard for guard in access.guards if not numbers.intersection(guard.loops)),
+    )
+    if not own & access.offset.leaves() and not any(numbers.intersection(redrawn_in(s)) for s in access.offset.leaves()):
+        return walk(outer, given)
+    if not outer.loops:
+        return Walk("single", None, 1.0, "data", 1.0, access.taken)
+    executions = walk(replace(outer, offset=number(0)), given).executions
+    return Walk("indirect", None, 1.0, "data", executions, access.taken)
 
 
 # ------------------------------------------------------------------------------------------------------- sizes
@@ -196,7 +226,9 @@ def _boxed(
     access: Access, trips: Sequence[Trips], strides: Sequence[Form], rest: Form, sizes: Mapping[Symbol, int]
 ) -> Walk:
     run_form: Form | None = number(access.element_bytes)
+    decided = _deciding_loop(access, trips)
     run = 1
+    thinned: float | None = None  # the mean run, once data decides whether the next round runs at all
     whole = True
     executions = 1
     pattern: Pattern = "single"
@@ -217,6 +249,8 @@ def _boxed(
             and not (copied and t is not trips[-1])
             and _joins(stride, value, run_form, run * access.element_bytes, run_basis)
         )
+        if whole and t.loop.number == decided:
+            thinned = run * min(float(t.count), 1 / (1 - EVEN_CHANCE)) if joins else float(run)
         if joins:
             run *= t.count
             run_basis.append(t.basis)
@@ -230,11 +264,11 @@ def _boxed(
                 gcd(start_multiple, *(abs(f) for f in stride.terms.values())) if stride.terms else start_multiple
             )
     basis = _worst(run_basis) if run_basis else _worst([t.basis for t in trips])
-    mean: float = float(run)
-    if pattern in ("repeated", "descending") or (pattern == "strided"):
+    mean = float(run) if thinned is None else thinned
+    if pattern in ("repeated", "descending", "strided"):
         mean = 1.0
-    if _guarded(access, trips):
-        mean, basis = min(mean, 1 / (1 - EVEN_CHANCE)) if pattern == "sequential" else 1.0, "data"
+    if decided is not None and (thinned is not None or pattern != "sequential"):
+        basis = "data"
     if access.manual:
         pattern = "sequential" if pattern == "single" else pattern
     if copied and pattern == "single":
@@ -284,6 +318,15 @@ def _guarded(access: Access, trips: Sequence[Trips]) -> bool:
     return any(g.by_data and numbers.intersection(_redrawn(g.condition)) for g in access.guards)
 
 
+def _deciding_loop(access: Access, trips: Sequence[Trips]) -> int | None:
+    """The innermost loop in whose iterations data decides anew whether the access runs."""
+    drawn: set[int] = set()
+    for guard in access.guards:
+        if guard.by_data:
+            drawn |= _redrawn(guard.condition)
+    return next((t.loop.number for t in reversed(trips) if t.loop.number in drawn), None)
+
+
 def _redrawn(form: Form) -> set[int]:
     """The loops of which a new iteration brings new data into the form."""
     return {n for symbol in form.leaves() if _holds_data(symbol) for n in redrawn_in(symbol)}
@@ -325,11 +368,21 @@ def _by_walking(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, i
         pattern, step = _seen_pattern(seen.steps, access.element_bytes)
     if indirect:
         basis = "data" if mean is None or mean < 2 else basis
-        return Walk("indirect", None, mean, basis, executions)
-    start = gcd(START_MULTIPLE, *(abs(f) for f in access.offset.terms.values()))
-    if any(s.kind == "operation" or s.kind == "carried" for s in access.offset.leaves()):
-        start = gcd(start, access.element_bytes)
-    return Walk(pattern, step, mean, basis, executions, access.taken, start, access.element_bytes)
+        return Walk("indirect", None, mean, basis, executions, access.taken, *_multiples(access, trips))
+    start, length = _multiples(access, trips) if pattern == "sequential" else (access.element_bytes,) * 2
+    return Walk(pattern, step, mean, basis, executions, access.taken, start, length)
+
+
+def _multiples(access: Access, trips: Sequence[Trips]) -> tuple[int, int]:
+    """What the start and the length of the rows that the innermost loop walks are known to be multiples of, in bytes."""
+    rest, length = access.offset, access.element_bytes
+    if trips:
+        inner = trips[-1]
+        step = access.offset.coefficient(inner.loop.counter)
+        if step is not None and step.known == access.element_bytes:
+            rest, length = access.offset.without(inner.loop.counter), access.element_bytes * _multiple(inner)
+    start = gcd(START_MULTIPLE, *(abs(factor) for factor in rest.terms.values()))
+    return max(start, access.element_bytes), length
 
 
 def _ends_by_itself(loop: LoopInstance) -> bool:
@@ -355,9 +408,9 @@ def _seen_pattern(steps: Mapping[int, int], element: int) -> tuple[Pattern, int 
     total = sum(steps.values())
     if not total:
         return "single", None
+    if steps.get(element, 0) * 5 >= total * 2:
+        return "sequential", element
     step, times = max(steps.items(), key=lambda item: (item[1], -abs(item[0])))
-    if step == element:
-        return ("sequential", element) if times * 2 >= total else ("irregular", None)
     if times * 4 < total * 3:
         return "irregular", None
     if step == -element:
@@ -418,10 +471,23 @@ def _values_in(form: Form, access: Access, seen: set[Symbol]) -> set[Symbol]:
                 found |= _values_in(operand, access, seen)
         elif symbol in carried:
             seen.add(symbol)
-            found |= _values_in(carried[symbol].next, access, seen) | _values_in(carried[symbol].first, access, seen)
+            step = carried[symbol].next
+            found |= _values_in(step, access, seen) | _values_in(carried[symbol].first, access, seen)
+            if not _only_steps(step, symbol):
+                found |= step.leaves() - carried.keys()
         else:
             found.add(symbol)
     return found
+
+
+def _only_steps(next_: Form, symbol: Symbol) -> bool:
+    """Whether a carried value moves by a step of its own, or starts anew, on every branch (bisection does neither)."""
+    if len(next_.terms) == 1:
+        (only,) = next_.symbols() or (symbol,)
+        if only.kind == "operation" and only.name == "select":
+            return all(_only_steps(arm, symbol) for arm in only.operands[1:])
+    step = next_ - symbol_form(symbol)
+    return any(not any(s.kind in ("carried", "data") for s in form.leaves()) for form in (step, next_))
 
 
 # ----------------------------------------------------------------------------------------------------- steered

@@ -1,7 +1,6 @@
 typedef ap_uint<512> word;
 static const ap_uint<8> table[4] = {1, 2, 3, 4};
 const ap_uint<4> grid[2][2] = {{1, 2}, {3, 4}};
-constexpr ap_uint<8> five = 5;
 enum mode { quiet, loud };
 template <int W> ap_uint<W> turn(ap_uint<W> x, int by) { return (x << by) | (x >> (W - by)); }
 void use(const word *in, word *out, volatile ap_uint<32> *port, float *echo, int i) {

@@ -6,9 +6,10 @@ enum ac_o_mode { AC_WRAP, AC_SAT, AC_SAT_ZERO, AC_SAT_SYM };
 template <int _BwW, int _BwI, bool _BwS = true, ac_q_mode _BwQ = AC_TRN, ac_o_mode _BwO = AC_WRAP> struct ac_fixed : ap_fixed_base<_BwW, _BwI, _BwS> {
   static constexpr int i_width = _BwI;
   static constexpr bool sign = _BwS;
-  ac_fixed() = default;
+  ac_fixed();
+  constexpr explicit ac_fixed(_BwLiteral _BwX) : ap_fixed_base<_BwW, _BwI, _BwS>(_BwX) {}
   ac_fixed(const ac_fixed &) = default;
-  template <class _BwT> constexpr ac_fixed(const _BwT &_BwX) : ap_fixed_base<_BwW, _BwI, _BwS>(_BwX) {}
+  template <class _BwT> ac_fixed(const _BwT &);
   ac_fixed &operator=(const ac_fixed &) = default;
   template <class _BwT> ac_fixed &operator=(const _BwT &);
   template <int _BwV> ac_int<_BwV, _BwS> slc(int) const;

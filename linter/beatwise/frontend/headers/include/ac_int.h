@@ -5,9 +5,10 @@
 #include <iostream>
 template <int _BwW, bool _BwS = true> struct ac_int : ap_int_base<_BwW, _BwS> {
   static constexpr bool sign = _BwS;
-  ac_int() = default;
+  ac_int();
+  constexpr explicit ac_int(_BwLiteral _BwX) : ap_int_base<_BwW, _BwS>(_BwX) {}
   ac_int(const ac_int &) = default;
-  template <class _BwT> constexpr ac_int(const _BwT &_BwX) : ap_int_base<_BwW, _BwS>(_BwX) {}
+  template <class _BwT> ac_int(const _BwT &);
   ac_int &operator=(const ac_int &) = default;
   template <class _BwT> ac_int &operator=(const _BwT &);
   template <int _BwV> ac_int<_BwV, _BwS> slc(int) const;

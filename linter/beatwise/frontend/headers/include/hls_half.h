@@ -3,8 +3,8 @@
 #include <_bw/traits.h>
 struct half {
   unsigned short _BwStore;
-  half() = default;
-  constexpr half(float) : _BwStore(0) {}
+  half();
+  half(float);
   operator float() const;
   half &operator++();
   half operator++(int);

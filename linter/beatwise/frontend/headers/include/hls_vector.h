@@ -11,7 +11,7 @@ template <class _BwT, size_t _BwN> class alignas((sizeof(_BwT) * _BwN) & -(sizeo
 public:
   typedef _BwT value_type;
   static constexpr size_t width = _BwN;
-  vector() = default;
+  vector();
   vector(const vector &) = default;
   vector(const _BwT &);
   vector(const _BwT (&)[_BwN]);

@@ -14,7 +14,7 @@ template <class _BwT, int _BwN> struct alignas((sizeof(_BwT) * _BwN) & -(sizeof(
   static constexpr int bits = bytes * 8;
   typedef _BwT value_type;
   _BwT _BwLanes[_BwN];
-  vec_t() = default;
+  vec_t();
   vec_t(const vec_t &) = default;
   template <class _BwU> explicit vec_t(const _BwU &);
   template <class... _BwU, class = _BwEnable<sizeof...(_BwU) == _BwN && (_BwN > 1)>> vec_t(const _BwU &...);

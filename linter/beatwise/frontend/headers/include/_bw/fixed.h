@@ -16,8 +16,9 @@ template <int _BwW, int _BwI, bool _BwS> struct ap_fixed_base {
   static constexpr bool sign_flag = _BwS;
   alignas(_BwMin(_BwBytes(_BwW), 512)) unsigned char _BwStore[_BwBytes(_BwW)];
 
-  ap_fixed_base() = default;
-  template <class _BwT> constexpr ap_fixed_base(const _BwT &) : _BwStore{} {}
+  ap_fixed_base();
+  constexpr explicit ap_fixed_base(_BwLiteral) : _BwStore{} {}
+  template <class _BwT> ap_fixed_base(const _BwT &);
   template <class _BwT, class = _BwEnable<__is_arithmetic(_BwT)>> operator _BwT() const;
   int to_int() const;
   unsigned to_uint() const;
@@ -57,9 +58,10 @@ template <int _BwW, int _BwI, bool _BwS> struct ap_fixed_base {
   struct _BwName : ap_fixed_base<_BwW, _BwI, _BwS> {                                                \
     static constexpr ap_q_mode qmode = _BwQ;                                                        \
     static constexpr ap_o_mode omode = _BwO;                                                        \
-    _BwName() = default;                                                                            \
+    _BwName();                                                                            \
+    constexpr explicit _BwName(_BwLiteral _BwX) : ap_fixed_base<_BwW, _BwI, _BwS>(_BwX) {}          \
     _BwName(const _BwName &) = default;                                                             \
-    template <class _BwT> constexpr _BwName(const _BwT &_BwX) : ap_fixed_base<_BwW, _BwI, _BwS>(_BwX) {} \
+    template <class _BwT> _BwName(const _BwT &);                                                    \
     _BwName &operator=(const _BwName &) = default;                                                  \
     template <class _BwT> _BwName &operator=(const _BwT &);                                         \
     template <class _BwT> void operator=(const _BwT &) volatile;                                    \

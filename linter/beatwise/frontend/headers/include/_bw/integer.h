@@ -16,6 +16,10 @@ constexpr int _BwBytes(int _BwBits) {
   return _BwSize;
 }
 
+// Makes a type one that a constexpr variable may have. Its other constructors must not be constexpr: the compiler would
+// work out every element of a large array, which takes seconds.
+enum class _BwLiteral {};
+
 // The built-in integer that an arbitrary-precision one converts to.
 template <int _BwSize, bool _BwS> struct _BwBuiltinOf { typedef _BwChoose<_BwS, long long, unsigned long long> type; };
 template <> struct _BwBuiltinOf<1, true> { typedef signed char type; };
@@ -35,9 +39,10 @@ template <int _BwW, bool _BwS> struct ap_int_base {
   static constexpr bool sign_flag = _BwS;
   alignas(_BwMin(_BwBytes(_BwW), 512)) unsigned char _BwStore[_BwBytes(_BwW)];
 
-  ap_int_base() = default;
-  template <class _BwT> constexpr ap_int_base(const _BwT &) : _BwStore{} {}
-  constexpr ap_int_base(const char *, signed char) : _BwStore{} {}
+  ap_int_base();
+  constexpr explicit ap_int_base(_BwLiteral) : _BwStore{} {}
+  template <class _BwT> ap_int_base(const _BwT &);
+  ap_int_base(const char *, signed char);
 
   operator typename _BwBuiltinOf<_BwBytes(_BwW), _BwS>::type() const volatile;
   int to_int() const volatile;
@@ -110,20 +115,22 @@ template <int _BwW, bool _BwS> struct ap_int_base {
 
 template <int _BwW> struct ap_int : ap_int_base<_BwW, true> {
   using ap_int_base<_BwW, true>::operator=;
-  ap_int() = default;
+  ap_int();
+  constexpr explicit ap_int(_BwLiteral _BwX) : ap_int_base<_BwW, true>(_BwX) {}
   ap_int(const ap_int &) = default;
-  template <class _BwT> constexpr ap_int(const _BwT &_BwFrom) : ap_int_base<_BwW, true>(_BwFrom) {}
-  constexpr ap_int(const char *_BwFrom, signed char _BwRadix) : ap_int_base<_BwW, true>(_BwFrom, _BwRadix) {}
+  template <class _BwT> ap_int(const _BwT &);
+  ap_int(const char *, signed char);
   ap_int &operator=(const ap_int &) = default;
   template <class _BwT> ap_int &operator=(const _BwT &);
   template <class _BwT> void operator=(const _BwT &) volatile;
 };
 template <int _BwW> struct ap_uint : ap_int_base<_BwW, false> {
   using ap_int_base<_BwW, false>::operator=;
-  ap_uint() = default;
+  ap_uint();
+  constexpr explicit ap_uint(_BwLiteral _BwX) : ap_int_base<_BwW, false>(_BwX) {}
   ap_uint(const ap_uint &) = default;
-  template <class _BwT> constexpr ap_uint(const _BwT &_BwFrom) : ap_int_base<_BwW, false>(_BwFrom) {}
-  constexpr ap_uint(const char *_BwFrom, signed char _BwRadix) : ap_int_base<_BwW, false>(_BwFrom, _BwRadix) {}
+  template <class _BwT> ap_uint(const _BwT &);
+  ap_uint(const char *, signed char);
   ap_uint &operator=(const ap_uint &) = default;
   template <class _BwT> ap_uint &operator=(const _BwT &);
   template <class _BwT> void operator=(const _BwT &) volatile;

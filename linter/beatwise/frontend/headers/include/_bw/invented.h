@@ -11,6 +11,9 @@
 namespace _BwInvented {
 template <class _BwT, class = void> struct _BwIsAny { static constexpr bool value = false; };
 template <class _BwT> struct _BwIsAny<_BwT, typename _BwT::_BwSwallows> { static constexpr bool value = true; };
+// Makes a type one that a constexpr variable may have. Its other constructors must not be constexpr: the compiler would
+// work out every element of a large array, which takes seconds.
+enum class _BwLiteral {};
 struct _BwAny;
 struct _BwUsable {
   typedef void _BwOpen, _BwSwallows;
@@ -28,9 +31,9 @@ struct _BwUsable {
   _BwAny operator~() const;
 };
 struct _BwAny : _BwUsable {
-  _BwAny() = default;
+  _BwAny();
   _BwAny(const _BwAny &) = default;
-  template <class... _BwA> constexpr explicit _BwAny(_BwA &&...) {}
+  template <class... _BwA> explicit _BwAny(_BwA &&...);
   _BwAny &operator=(const _BwAny &) = default;
   template <class _BwT> _BwAny &operator=(const _BwT &);
   _BwAny operator&() const;
@@ -51,9 +54,11 @@ template <class _BwA, class _BwB, class = _BwEither, class = _BwEnable<!__is_cla
 #undef _BwUpdate
 // The body of a stand-in type; each is a type of its own.
 #define _BwStandIn(_BwName)                                                  \
-  _BwName() = default;                                                       \
+  _BwName();                                                                 \
+  template <class _BwT, class = _BwEnable<__is_same(_BwT, _BwLiteral)>>      \
+  constexpr explicit _BwName(_BwT) {}                                        \
   _BwName(const _BwName &) = default;                                        \
-  template <class... _BwArguments> constexpr _BwName(_BwArguments &&...) {}  \
+  template <class... _BwArguments> _BwName(_BwArguments &&...);              \
   _BwName &operator=(const _BwName &) = default;                             \
   template <class _BwFrom> _BwName &operator=(const _BwFrom &);              \
   template <class _BwFrom> void operator=(const _BwFrom &) volatile;         \
