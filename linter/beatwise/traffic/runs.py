@@ -40,6 +40,9 @@ def walk(access: Access, given: Mapping[str, int]) -> Walk:
     """
     if access.unresolved is not None:
         return Walk("unresolved", None, None, "constant", None, access.unresolved)
+    left = [loop for loop in access.loops if _leaves(access, loop)]
+    if left:
+        return _last_of(access, left, given)
     sizes = {symbol: _size(symbol, given) for symbol in _parameters(access)}
     lost = _lost(access)
     if lost is not None:
@@ -364,6 +367,7 @@ def _by_walking(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, i
     if seen.executions == 1 and seen.whole:
         return Walk("single", None, 1.0, basis, 1.0)
     pattern, step = _seen_pattern(seen.inner_steps or seen.steps, access.element_bytes)
+    mean = 1.0 if pattern == "repeated" else mean
     if seen.inner_steps and mean is not None and mean >= 1.5 and pattern not in ("sequential",):
         pattern, step = _seen_pattern(seen.steps, access.element_bytes)
     if indirect:
