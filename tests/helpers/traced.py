@@ -68,7 +68,7 @@ def show_access(access: Access) -> str:
     words += ["volatile"] if access.volatile else []
     words += ["by request"] if access.manual else []
     if access.choice is not None:
-        words.append(f"picked by {show(access.choice.selector)} from {' '.join(access.choice.alternatives)}")
+        words.append(f"{'|'.join(access.choice.alternatives)} by {show(access.choice.selector)}")
     words += [f"unresolved: {access.unresolved}"] if access.unresolved else []
     words += [f"taken: {access.taken}"] if access.taken else []
     return "  ".join(words)

@@ -43,14 +43,14 @@ from helpers.traced import show
 
 Values = Mapping[Symbol, int]
 
-I, J = (forms.counter(name, serial) for serial, name in enumerate("ij", 1))
+ROW, COLUMN = (forms.counter(name, serial) for serial, name in enumerate("ij", 1))
 N = forms.parameter("n", 0, 40)
 WIDE = forms.parameter("wide", None, None)
 DRAWN = forms.data("mask", None, (1,), low=-8, high=7)
-SYMBOLS = (I, J, N, WIDE, DRAWN)
+SYMBOLS = (ROW, COLUMN, N, WIDE, DRAWN)
 i, j, n, wide, drawn = (symbol_form(symbol) for symbol in SYMBOLS)
 
-RANGES = {I: (0, 30), J: (0, 30), N: (0, 40), WIDE: (-50, 50), DRAWN: (-8, 7)}
+RANGES = {ROW: (0, 30), COLUMN: (0, 30), N: (0, 40), WIDE: (-50, 50), DRAWN: (-8, 7)}
 values = st.fixed_dictionaries({symbol: st.integers(*span) for symbol, span in RANGES.items()})
 numbers = st.integers(-20, 20).map(number)
 plain = st.one_of(st.sampled_from([i, j, n, wide, drawn]), numbers)
@@ -138,20 +138,20 @@ def test_a_polynomial_of_too_many_terms_keeps_only_what_it_depends_on() -> None:
 
 def test_the_coefficient_is_what_one_more_of_a_symbol_adds() -> None:
     form = i * j * 4 + i * n + j + 3
-    assert form.coefficient(I) == j * 4 + n
-    assert form.without(I) == j + 3
+    assert form.coefficient(ROW) == j * 4 + n
+    assert form.without(ROW) == j + 3
     assert form.coefficient(DRAWN) == ZERO
 
 
 def test_what_is_not_linear_in_a_symbol_has_no_coefficient() -> None:
-    assert (i * i).coefficient(I) is None
-    assert (floordiv(i + n, number(3)) * i).coefficient(I) is None
+    assert (i * i).coefficient(ROW) is None
+    assert (floordiv(i + n, number(3)) * i).coefficient(ROW) is None
 
 
 def test_the_leaves_are_all_symbols_below_also_those_a_loaded_value_was_indexed_by() -> None:
-    loaded = forms.data("table", None, (1,), at=i * 4, depends=frozenset({I}))
+    loaded = forms.data("table", None, (1,), at=i * 4, depends=frozenset({ROW}))
     form = floordiv(symbol_form(loaded) + wide, number(8))
-    assert form.leaves() == {loaded, I, WIDE}
+    assert form.leaves() == {loaded, ROW, WIDE}
     assert [symbol.kind for symbol in form.symbols()] == ["operation"]
     assert redrawn_in(loaded) == {1}
 
@@ -320,7 +320,7 @@ def test_bounds_are_as_close_as_the_operation_allows(form: Form, expected: tuple
 # --------------------------------------------------------------------------------------------------- substitution
 
 
-@given(any_form, st.sampled_from([I, J, N, WIDE]), numbers, values)
+@given(any_form, st.sampled_from([ROW, COLUMN, N, WIDE]), numbers, values)
 def test_a_symbol_is_replaced_by_a_value(a: Form, symbol: Symbol, by: Form, found: dict[Symbol, int]) -> None:
     if by.constant < 0 and symbol is not WIDE:
         by = -by
@@ -330,21 +330,21 @@ def test_a_symbol_is_replaced_by_a_value(a: Form, symbol: Symbol, by: Form, foun
 @given(any_form, st.integers(0, 3), st.integers(0, 9), values)
 def test_a_symbol_is_replaced_by_a_form(a: Form, slope: int, start: int, found: dict[Symbol, int]) -> None:
     by = j * slope + start
-    assert at(substitute(a, {I: by}), found) == at(a, {**found, I: at(by, found)})
+    assert at(substitute(a, {ROW: by}), found) == at(a, {**found, ROW: at(by, found)})
 
 
 def test_replacing_simplifies_anew() -> None:
     guarded = select(less(i, n), i * 2, ZERO)
-    assert substitute(guarded, {I: number(3), N: number(4)}) == number(6)
-    assert substitute(floordiv(i + n, number(4)), {I: j * 4 - n}) == j
+    assert substitute(guarded, {ROW: number(3), N: number(4)}) == number(6)
+    assert substitute(floordiv(i + n, number(4)), {ROW: j * 4 - n}) == j
 
 
 def test_a_loaded_value_goes_on_to_depend_on_what_its_index_was_made_of() -> None:
-    loaded = symbol_form(forms.data("table", None, (1,), at=i * 4, depends=frozenset({I})))
-    first, second = (substitute(loaded, {I: j + 1}) for _ in range(2))
+    loaded = symbol_form(forms.data("table", None, (1,), at=i * 4, depends=frozenset({ROW})))
+    first, second = (substitute(loaded, {ROW: j + 1}) for _ in range(2))
     assert first == second, "the same value, however often it is rewritten"
     assert show(first) == "table[4 + 4*j]"
-    assert J in first.leaves()
+    assert COLUMN in first.leaves()
 
 
 # ------------------------------------------------------------------------------------------------------ compiled

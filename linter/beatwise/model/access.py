@@ -15,7 +15,7 @@ Direction = Literal["read", "write"]
 
 @dataclass(frozen=True, slots=True)
 class Recurrence:
-    """A variable that a loop carries along without a closed form: ``symbol`` starts as ``first``, then becomes ``next``."""
+    """A variable that a loop carries along without a closed form: ``symbol`` begins as ``first``, then is ``next``."""
 
     symbol: Symbol
     first: Form
@@ -138,7 +138,7 @@ class Stream:
 
 @dataclass(frozen=True, slots=True)
 class Interface:
-    """An AXI master port of the kernel. Options are None where no directive says them; the board's defaults then hold."""
+    """An AXI master port of the kernel. Options are None where no directive says them: the board's defaults hold."""
 
     name: str
     arguments: tuple[str, ...]

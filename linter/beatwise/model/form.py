@@ -1,8 +1,8 @@
 """What an address, a bound or a condition depends on, as a closed expression.
 
 A ``Form`` is a polynomial with integer coefficients over symbols: loop counters, kernel parameters, loaded data, and
-operations that are no polynomial (a quotient, a minimum, a comparison, a table) of other forms. Two forms that are built
-the same way are equal, so that ``8 * (k / 8) + k % 8`` is ``k``. Whole numbers only, in the units of their use.
+operations that are no polynomial (a quotient, a minimum, a comparison, a table) of other forms. Two forms that are
+built the same way are equal, so that ``8 * (k / 8) + k % 8`` is ``k``. Whole numbers only, in the units of their use.
 """
 
 from __future__ import annotations
@@ -25,7 +25,8 @@ class Symbol:
     """A quantity that a form is made of. Two with one ``number`` are the same, even where one knows more of itself.
 
     ``counter``: 0, 1, 2, ... of the loop ``loop``. ``parameter``: a scalar argument of the top function. ``data``: read
-    from memory, a stream or a table (``name`` says which, ``at`` the byte offset it was read from, when known); drawn anew in every iteration of ``loops``.
+    from memory, a stream or a table (``name`` says which, ``at`` the byte offset it was read from, when known); drawn
+    anew in every iteration of ``loops``.
     ``carried``: what a variable holds when an iteration of ``loop`` starts, where no closed form was found.
     ``unknown``: could not be followed, ``reason`` says why. ``operation``: ``name`` applied to ``operands``.
     """
@@ -60,7 +61,7 @@ Monomial = tuple[Symbol, ...]
 
 
 class Form:
-    """A polynomial: ``terms`` maps a product of symbols (sorted) to its coefficient; the empty product is the constant."""
+    """A polynomial: ``terms`` maps a product of symbols (sorted) to its coefficient; the constant's is empty."""
 
     __slots__ = ("_hash", "_leaves", "terms")
 
@@ -147,9 +148,7 @@ class Form:
             if at == 1:
                 rest = tuple(other for other in monomial if other != symbol)
                 terms[rest] = terms.get(rest, 0) + factor
-            if any(
-                other.kind != "counter" and symbol in _leaves_of(other) for other in monomial if other != symbol
-            ):
+            if any(other.kind != "counter" and symbol in _leaves_of(other) for other in monomial if other != symbol):
                 return None
         return Form(terms)
 

@@ -20,7 +20,7 @@ from beatwise.model.types import Type
 class Directive:
     """One HLS directive, from a pragma or an external script.
 
-    ``kind`` is lower case (``interface``, ``pipeline``, ``unroll``, ``dataflow``, ``array_partition``, ``stream``, ...).
+    ``kind`` is lower case (``interface``, ``pipeline``, ``unroll``, ``dataflow``, ``array_partition``, ``stream`` ...).
     ``options`` has lower-case keys; a flag such as ``off`` or ``m_axi`` has the value ``""``. An option whose text is a
     macro, constant or template parameter is already replaced by its value where that is known. For ``interface``,
     ``options["mode"]`` is always set where a mode is given, however it was spelled.
@@ -328,7 +328,7 @@ class Loop:
 
 @dataclass(frozen=True, slots=True)
 class Case:
-    """One arm of a switch: ``values`` are its labels (None within for ``default``); it falls through unless it breaks."""
+    """One arm of a switch: ``values`` are its labels (None for ``default``); it falls through unless it breaks."""
 
     values: tuple[Expression | None, ...]
     body: tuple[Statement, ...]
@@ -371,7 +371,7 @@ Statement = Block | Declare | Evaluate | If | Loop | Switch | Leave | Return | L
 
 @dataclass(frozen=True, slots=True)
 class Function:
-    """A function with a body, or a method (``record`` is then the key of its type), or one instantiation of a template."""
+    """A function with a body, a method (``record`` is then the key of its type), or an instantiation of a template."""
 
     key: str
     name: str

@@ -12,16 +12,22 @@ Pattern = Literal[
     "sequential", "descending", "strided", "repeated", "indirect", "steered", "irregular", "single", "unresolved"
 ]
 Basis = Literal["constant", "given", "tripcount", "assumed", "data"]
-Block = Literal["data-dependent-guard", "data-dependent-exit", "interleaved", "load-and-store", "volatile", "not-ascending", "destination-by-data"]  # fmt: skip
-Limit = Literal["port", "width", "requests", "gaps", "order", "rows", "channel", "turnaround", "switch", "shared", "interval"]  # fmt: skip
+Block = Literal[
+    "data-dependent-guard", "data-dependent-exit", "interleaved", "load-and-store", "volatile", "not-ascending",
+    "destination-by-data",
+]  # fmt: skip
+Limit = Literal[
+    "port", "width", "requests", "gaps", "order", "rows", "channel", "turnaround", "switch", "shared", "interval"
+]
 
 
 @dataclass(frozen=True, slots=True)
 class Walk:
     """The order in which an access visits its elements.
 
-    ``stride_bytes`` is the step of the innermost loop that moves it, when constant. ``run_elements`` is the mean number of consecutive
-    ascending elements before the address first jumps. ``executions`` counts how often the access runs in one call of the kernel.
+    ``stride_bytes`` is the step of the innermost loop that moves it, when constant. ``run_elements`` is the mean number
+    of consecutive ascending elements before the address first jumps. ``executions`` counts how often the access runs in
+    one call of the kernel.
     """
 
     pattern: Pattern

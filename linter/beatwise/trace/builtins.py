@@ -2,15 +2,12 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
-
-from beatwise.model.access import LoopInstance
+from beatwise.model.access import Choice, LoopInstance
 from beatwise.model.form import (
     ONE,
     ZERO,
     Form,
     counter,
-    renumbered,
     data,
     div,
     floordiv,
@@ -19,6 +16,7 @@ from beatwise.model.form import (
     minimum,
     negation,
     number,
+    renumbered,
     select,
     symbol_form,
 )
@@ -35,9 +33,11 @@ from beatwise.model.types import (
     VectorType,
 )
 from beatwise.trace.expressions import Evaluator, bare
+from beatwise.trace.machine import alternatives
 from beatwise.trace.state import State
 from beatwise.trace.values import (
     NOTHING,
+    ChoiceSpot,
     LocalSpot,
     LostSpot,
     MemorySpot,
@@ -220,19 +220,19 @@ class Builtins(Evaluator):
         name = call.name
         values = [self.value(argument, state) for argument in call.arguments]
         if name in ("read_request", "write_request") and len(values) == 2:
-            base = self._burst_base(self._object(call.receiver, state), kind, state, call.place)
+            base = self._burst_base(self._object(call.receiver, state), state, call.place)
             start = shifted(base, self._form_of(values[0]), kind.to)
             direction = "read" if name == "read_request" else "write"
             self.run_of(start, self._form_of(values[1]), direction, call.place, state, kind.to, manual=True)
             return NOTHING
         if name == "read":
-            burst = self._burst_base(self._object(call.receiver, state), kind, state, call.place)
+            burst = self._burst_base(self._object(call.receiver, state), state, call.place)
             argument = burst.argument if isinstance(burst, MemorySpot) else "a burst"
             drawn = Number(symbol_form(data(argument, call.place, self.open)))
             return drawn
         return NOTHING
 
-    def _burst_base(self, spot: Spot, kind: BurstPointerType, state: State, place: Place) -> Spot:
+    def _burst_base(self, spot: Spot, state: State, place: Place) -> Spot:
         if isinstance(spot, LocalSpot):
             held = state.read(spot, place)
             if isinstance(held, Pointer):
@@ -274,14 +274,10 @@ class Builtins(Evaluator):
     def _each_arm(
         self, spot: Spot, elements: Form, direction: str, place: Place, state: State, kind: Type, manual: bool
     ) -> None:
-        from beatwise.model.access import Choice
-        from beatwise.trace.machine import alternatives
-        from beatwise.trace.values import ChoiceSpot
-
         if isinstance(spot, ChoiceSpot):
             for condition, arm in spot.arms:
                 self._choosing = Choice(spot.selector, spot.place, alternatives(spot))
-                branch = state.under(condition, spot.place, self.open)
+                branch = state.under(condition, spot.place, self.open, chooses=True)
                 self.run_of(arm, elements, direction, place, branch, kind, manual=manual)
                 self._choosing = None
         elif isinstance(spot, LostSpot):
@@ -332,10 +328,10 @@ class Builtins(Evaluator):
 
     def _copy(self, target: Spot, source: Spot, size: Form, in_bytes: bool, place: Place, state: State) -> None:
         if not isinstance(source, LocalSpot):
-            elements = _elements(size, source, other=target) if in_bytes else size
+            elements = _elements(size, source) if in_bytes else size
             self.run_of(source, elements, "read", place, state, _element_type(source))
         if not isinstance(target, LocalSpot):
-            elements = _elements(size, target, other=source) if in_bytes else size
+            elements = _elements(size, target) if in_bytes else size
             self.run_of(target, elements, "write", place, state, _element_type(target))
             return
         if isinstance(source, MemorySpot):
@@ -370,8 +366,10 @@ def _element_type(spot: Spot) -> Type:
     return spot.type if isinstance(spot, MemorySpot | LocalSpot) else IntType(8, False, 1)
 
 
-def _elements(size: Form, spot: Spot, other: Spot | None = None) -> Form:
-    """Bytes as elements of the spot."""
+def _elements(size: Form, spot: Spot) -> Form:
+    """Bytes as elements of the spot; the arms of a choice have elements of one size."""
+    while isinstance(spot, ChoiceSpot):
+        spot = spot.arms[0][1]
     unit = spot.unit_bytes if isinstance(spot, MemorySpot) else _element_type(spot).bytes
     return floordiv(size, number(unit or 1))
 

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Iterator, Sequence
 
 from beatwise.model.form import ZERO, Form, data, symbol_form
 from beatwise.model.kernel import Build, Call, Expression, Function, FunctionName, Variable
@@ -18,6 +18,7 @@ from beatwise.model.types import (
     ReferenceType,
     StreamType,
     Type,
+    UnknownType,
     VectorType,
 )
 from beatwise.trace.builtins import SILENT, Builtins
@@ -128,10 +129,16 @@ class Caller(Builtins):
         assert function.body is not None
         flow = self.run(function.body, state)
         result = self._returned_value(flow.next, flow.returns, state, place)
+        self._forget_locals(state, frame.activation, result)
         state.guards = guards
         self.calls.pop()
         self.frame, self.process = outer, process
         return result
+
+    def _forget_locals(self, state: State, since: int, result: Value) -> None:
+        """The variables of a call that has ended are gone, but for what its result points to."""
+        kept = {spot.root for spot in _spots_in(result)}
+        state.cells = {root: cells for root, cells in state.cells.items() if root[1] < since or root in kept}
 
     def _starts_process(self, outer: Frame) -> bool:
         return self.process is None and any(d.kind == "dataflow" for d in outer.function.directives)
@@ -158,7 +165,7 @@ class Caller(Builtins):
         self.frame.roots[parameter.key] = root
         kind = parameter.type
         self.types[root] = kind
-        self._names[root] = parameter.name
+        self.names[root] = parameter.name
         state.cells[root] = {}
         if isinstance(bound, MemorySpot | LocalSpot | ChoiceSpot | LostSpot):
             if isinstance(bare(kind), StreamType) and not isinstance(kind, ReferenceType):
@@ -232,8 +239,6 @@ class Caller(Builtins):
         function = self.program.functions.get(expression.function) if expression.function else None
         kind = bare(expression.type)
         if function is not None and function.body is not None and isinstance(kind, RecordType):
-            from beatwise.model.types import UnknownType
-
             root = ("an object", next(self._activations))
             self.types[root] = UnknownType(kind.name)
             state.cells[root] = {}
@@ -284,10 +289,8 @@ class Caller(Builtins):
                 self._given_away(expression, argument, value.spot, state)
             else:
                 pieces.append(self._form_of(value))
-        if isinstance(bare(expression.type), RealType | IntType):
-            return Number(depending(*pieces)) if pieces else self.lost(
-                f"{expression.name} has no body here", expression.place
-            )  # fmt: skip
+        if isinstance(bare(expression.type), RealType) and pieces:
+            return Number(depending(*pieces))
         return self.lost(f"{expression.name} has no body here", expression.place, *pieces)
 
     def _given_away(self, call: Call, argument: Expression, spot: Spot, state: State) -> None:
@@ -300,3 +303,19 @@ class Caller(Builtins):
             pointed = bare(argument.type)
             if isinstance(pointed, PointerType) and isinstance(pointed.to, IntType | RealType):
                 state.write(spot, Number(symbol_form(data(call.name, call.place, self.open))))
+
+
+def _spots_in(value: Value) -> Iterator[LocalSpot]:
+    """The variables that a value points to."""
+    match value:
+        case Pointer(LocalSpot() as spot):
+            yield spot
+        case Pointer(ChoiceSpot(arms=arms)):
+            for _, arm in arms:
+                yield from _spots_in(Pointer(arm))
+        case Record(parts):
+            for part in parts.values():
+                yield from _spots_in(part)
+        case Closure(roots=roots):
+            for root in roots.values():
+                yield LocalSpot(root, (), CallableType())

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from beatwise.model.form import ONE, ZERO, Form, Symbol, negation, number, parameter, symbol_form
+from beatwise.model.form import ONE, ZERO, Form, Symbol, div, negation, number, parameter, symbol_form
 from beatwise.model.kernel import (
     Assign,
     Binary,
@@ -39,7 +39,7 @@ from beatwise.model.types import (
 )
 from beatwise.trace.integers import binary, bit_range, fitted, inverted
 from beatwise.trace.machine import Machine
-from beatwise.trace.state import State
+from beatwise.trace.state import State, joined
 from beatwise.trace.values import (
     NOTHING,
     ChoiceSpot,
@@ -98,7 +98,7 @@ class Evaluator(Machine):
             case FunctionName():
                 return self._closure(expression, state)
             case This():
-                return Pointer(self.frame_this(expression.place))
+                return Pointer(self.frame_this())
             case Unary():
                 return self._unary(expression, state)
             case Step(by=by, prefix=prefix, operand=operand, place=place):
@@ -122,7 +122,8 @@ class Evaluator(Machine):
                 made_of = [self.number(part, state) for part in parts]
                 return self.lost(reason, place, *made_of)
 
-    def frame_this(self, place: Place) -> Spot:
+    def frame_this(self) -> Spot:
+        """The object that the method around works on."""
         frame = self.frame
         while frame.this is None and frame.outer is not None:
             frame = frame.outer
@@ -171,7 +172,7 @@ class Evaluator(Machine):
         low = self.number(expression.low, state) if expression.low is not None else None
         spot = self.spot(expression.base, state)
         if isinstance(spot, MemorySpot):
-            spot = _bits_of(spot, expression, high, low)
+            spot = _bits_of(spot, high, low)
         whole = (
             self.load(spot, expression.base.place, state) if spot is not None else self.value(expression.base, state)
         )
@@ -271,8 +272,6 @@ class Evaluator(Machine):
             kind = bare(left_type)
             if op == "-":
                 size = kind.to.bytes if isinstance(kind, PointerType) else left.unit_bytes
-                from beatwise.model.form import div
-
                 return Number(div(left.offset - right.offset, number(size or 1)))
             return Number(binary(op, left.offset, right.offset, kind))
         if isinstance(left, LocalSpot) and isinstance(right, LocalSpot) and left.root == right.root and left.path:
@@ -298,7 +297,7 @@ class Evaluator(Machine):
         branch = state.under(goes, expression.left.place, self.open)
         right = self.condition(expression.right, branch)
         skips = state.under(negation(goes), expression.left.place, self.open)
-        meets = self.join(branch, skips, expression.place)
+        meets = joined(branch, skips, expression.place)
         guards = state.guards
         if meets is not None:
             state.become(meets)
@@ -315,7 +314,7 @@ class Evaluator(Machine):
         yes = self.value(expression.yes, yes_state)
         no_state = state.under(negation(condition), place, self.open)
         no = self.value(expression.no, no_state)
-        meets = self.join(yes_state, no_state, place)
+        meets = joined(yes_state, no_state, place)
         if meets is not None:
             state.become(meets)
             state.guards = guards
@@ -370,7 +369,7 @@ class Evaluator(Machine):
         """Where the expression lies; None when it is a mere value."""
         match expression:
             case Name(key=key):
-                return self._name_spot(key, expression.type, state, expression.place)
+                return self._name_spot(key, expression.type, state)
             case This():
                 return None
             case Unary(op="*", operand=operand):
@@ -414,13 +413,8 @@ class Evaluator(Machine):
         """Whether a call's result is a place although its type does not say so."""
         return False
 
-    def _name_spot(self, key: str, kind: Type, state: State, place: Place) -> Spot:
+    def _name_spot(self, key: str, kind: Type, state: State) -> Spot:
         root = self.root(key)
-        captured = self.captured(key)
-        if captured is not None and root not in state.cells:
-            return captured.spot if isinstance(captured, Pointer) and isinstance(kind, ReferenceType) else LocalSpot(
-                root, (), bare(kind)
-            )  # fmt: skip
         declared = self.types.get(root, kind)
         if root[1] == 0 and root not in state.cells and key in self.program.globals:
             self.define_global(key, state)
@@ -433,15 +427,12 @@ class Evaluator(Machine):
                 return LocalSpot(root, (), bare(declared))
         return replace_type(spot, bare(declared))
 
-    def captured(self, key: str) -> Value | None:
-        return None
-
     def define_global(self, key: str, state: State) -> None:
         """A global comes into being when it is first used."""
         variable = self.program.globals[key]
         root = (key, 0)
         self.types[root] = variable.type
-        self._names[root] = variable.name
+        self.names[root] = variable.name
         state.cells[root] = {}
         written, state.written = state.written, None
         if variable.initial is not None:
@@ -486,9 +477,9 @@ class Evaluator(Machine):
                 return shifted(value.spot, at, expression.type)
             whole = self.temporary(value, kind, state)
         spot = element(whole, at, expression.type)
-        return self._element_reference(spot, expression.type, state, expression.place)
+        return self._element_reference(spot, expression.type, state)
 
-    def _element_reference(self, spot: Spot, kind: Type, state: State, place: Place) -> Spot:
+    def _element_reference(self, spot: Spot, kind: Type, state: State) -> Spot:
         """An element that is itself bound to something else (an array of references to streams)."""
         if isinstance(spot, LocalSpot) and isinstance(bare(kind), StreamType | RecordType):
             held = state.cells.get(spot.root, {}).get(spot.path)
@@ -529,7 +520,7 @@ class Evaluator(Machine):
             state.write(spot, Number(depending(form, self._form_of(old) if old is not None else ZERO)))
             return spot
         if isinstance(spot, MemorySpot):
-            spot = _bits_of(spot, target, high, low)
+            spot = _bits_of(spot, high, low)
         if spot is not None:
             self.store(spot, value, target.base.place, state)
             self._stored = value
@@ -542,8 +533,8 @@ class Evaluator(Machine):
         frame.roots[variable.key] = root
         kind = variable.type
         self.types[root] = kind
-        self._names[root] = variable.name
-        self.note_stream(variable, root)
+        self.names[root] = variable.name
+        self.note_stream(variable)
         if variable.scope == "static":
             self.statics[root] = variable
             if root in state.cells:
@@ -585,7 +576,7 @@ class Evaluator(Machine):
             return value
         return Number(symbol_form(self.size_named(name)))
 
-    def note_stream(self, variable: Variable, root: Root) -> None:
+    def note_stream(self, variable: Variable) -> None:
         """A declared FIFO, or array of FIFOs, is remembered."""
 
     # -------------------------------------------------------------------------------- provided by the next part
@@ -619,7 +610,7 @@ def _put(parts: dict[Path, Value], path: Path, value: Value) -> None:
         parts[path] = value
 
 
-def _bits_of(spot: MemorySpot, expression: Bits, high: Form | None, low: Form | None) -> MemorySpot:
+def _bits_of(spot: MemorySpot, high: Form | None, low: Form | None) -> MemorySpot:
     """A bit range of an element in memory."""
     width = (high - low).known if high is not None and low is not None else None
     part = max(1, -(-(width + 1) // 8)) if width is not None and width >= 0 else None

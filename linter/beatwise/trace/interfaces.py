@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable
-
 from beatwise.model.access import Interface
 from beatwise.model.kernel import Directive, Function, Variable
 from beatwise.model.types import (
@@ -23,9 +21,7 @@ from beatwise.trace.machine import Argument
 MASTER = "m_axi"
 
 
-def interfaces_of(
-    function: Function, script: Iterable[Directive] = ()
-) -> tuple[tuple[Interface, ...], dict[str, Argument]]:
+def interfaces_of(function: Function) -> tuple[tuple[Interface, ...], dict[str, Argument]]:
     """The ports, in the order of the arguments, and the arguments that reach them."""
     ports: dict[str, list[tuple[Variable, Directive | None]]] = {}
     arguments: dict[str, Argument] = {}

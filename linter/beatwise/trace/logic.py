@@ -13,7 +13,7 @@ Test = tuple[Form, int | None]  #: (x, 3) is x == 3; (x, None) is x < 0
 
 
 def always(condition: Form) -> bool:
-    """Whether the condition is 1 for every outcome of its tests; tests of one value against constants exclude each other.
+    """Whether the condition is 1 for every outcome of its tests; those of one value against constants exclude each other.
 
     >>> from beatwise.model.form import either, equal, parameter, symbol_form, negation
     >>> x = symbol_form(parameter("x", 0, None))

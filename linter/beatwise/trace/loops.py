@@ -26,12 +26,13 @@ from beatwise.model.form import (
     unknown,
 )
 from beatwise.model.kernel import Directive, Expression, Loop
-from beatwise.model.types import ArrayType, IntType, PointerType, Type
+from beatwise.model.types import ArrayType, IntType, PointerType, RealType, Type
 from beatwise.trace.calls import Caller
 from beatwise.trace.expressions import bare
+from beatwise.trace.interfaces import element_type
 from beatwise.trace.machine import Flow
 from beatwise.trace.recurrence import Carry, Solved, Trips, solve, trips_while
-from beatwise.trace.state import ANY, State, conjunction, replaced
+from beatwise.trace.state import ANY, State, conjunction, joined, replaced, replaced_cells
 from beatwise.trace.values import (
     ChoiceSpot,
     LocalSpot,
@@ -152,6 +153,7 @@ class Looper(Caller):
     def _scouted(self, statement: Loop, state: State) -> Flow:
         """One look at the body, for what it writes."""
         flow = Flow(None)
+        self._loosen(statement, state)
         if statement.condition is not None:
             self.value(statement.condition, state)
         part = self.run(statement.body, state.copy())
@@ -166,10 +168,11 @@ class Looper(Caller):
     def _scout(self, statement: Loop, state: State) -> tuple[set[Cell], set[Cell], Mapping[Root, Mapping[Path, Value]]]:
         """The cells that the body and the step write; and what the body leaves in them, roughly."""
         twin = state.copy()
-        twin.written = set()
         mark, open_ = self.record.mark(), self.open
         self.scouting += 1
         self.open = (*self.open, -1)
+        self._loosen(statement, twin)
+        twin.written = set()
         if statement.condition is not None:
             self.value(statement.condition, twin)
         part = self.run(statement.body, twin.copy())
@@ -193,6 +196,18 @@ class Looper(Caller):
             {cell for cell in in_step if cell[0] in own},
             after.cells,
         )
+
+    def _loosen(self, statement: Loop, state: State) -> None:
+        """Takes their values from the variables that the loop steps by, so that ``a[i]`` is no certain element."""
+        trial = state.copy()
+        trial.written = set()
+        if statement.step is not None:
+            self.value(statement.step, trial)
+        else:
+            self.run(statement.body, trial)
+        for root, path in trial.written:
+            if root in state.cells and isinstance(state.cells[root].get(path), Number):
+                self._set(state, (root, path), Number(symbol_form(carried(self.variable_name(root), -1))))
 
     # -------------------------------------------------------------------------------------------- following
 
@@ -242,18 +257,16 @@ class Looper(Caller):
         condition = ONE
         if statement.condition is not None and statement.test_first:
             condition = self.condition(statement.condition, begin)
-        at_exit = begin.copy()
         flow = self.run(statement.body, begin)
         end = flow.next
         for state_ in flow.continues:
-            end = self.join(end, state_, statement.place)
+            end = joined(end, state_, statement.place)
         if end is not None:
             end.guards = base_guards
             if statement.step is not None:
                 self.value(statement.step, end)
             if statement.condition is not None and not statement.test_first:
                 condition = self.condition(statement.condition, end)
-                at_exit = end.copy()
         # what is carried
         if end is not None and not turning:
             self._find_turning(statement, moving, end)
@@ -267,7 +280,7 @@ class Looper(Caller):
             exits = [ONE]
         trips = self._trips(condition, exits, count_from, statement, trips_early)
         silent = self.record.mark() == mark
-        if silent and _is_computed(solved, changed_in_body, hints) and self._is_short(trips, self.steps - steps):
+        if silent and self._is_computed(moving, solved, changed_in_body, hints) and self._is_short(trips, self.steps - steps):
             self.open = outer_open
             del self.record.loops[loop_number]
             assert trips.count is not None and trips.count.known is not None
@@ -282,12 +295,10 @@ class Looper(Caller):
             values[count_from] = symbol_form(final)
             memo = {}
         self.record.substitute(mark, values, memo)
-        self.record.loops[loop_number] = self._instance(
-            statement, loop_number, final, trips, values, memo, solved.left, condition, exits
-        )
+        self.record.loops[loop_number] = self._instance(statement, loop_number, final, trips, values, solved.left)
         self.open = outer_open
         return self._leave(
-            statement, state, entry, end, at_exit, flow, moving, early, values, memo, final, trips, loop_number,
+            statement, state, entry, end, flow, moving, early, values, memo, final, trips, loop_number,
             count_from, provisional,
         )  # fmt: skip
 
@@ -318,7 +329,7 @@ class Looper(Caller):
                 symbol = carried(self.variable_name(root), loop_number, low, high)
                 if isinstance(before, Pointer):
                     symbol = replace(symbol, low=None, high=None)
-                mover = Moving((root, key), symbol, before, kind)
+                mover = Moving((root, key), symbol, before, element_type(self.types.get(root, IntType(32, True, 4))))
                 moving.append(mover)
                 self._set(entry, mover.cell, mover.entering())
         return moving
@@ -418,6 +429,25 @@ class Looper(Caller):
         inside.update(n for n in self.record.loops if n > loop_number)
         return solve(carries, count_from, frozenset(inside))
 
+    def _is_computed(
+        self,
+        moving: list[Moving],
+        solved: Solved,
+        changed: set[Cell],
+        hints: Mapping[Root, Mapping[Path, Value]],
+    ) -> bool:
+        """Whether the loop computes something that no formula covers, and that is neither data anyway nor a real."""
+        reals = {m.symbol for m in moving if isinstance(m.kind, RealType)}
+        if any(c.symbol not in reals and not any(s.kind == "data" for s in c.symbol.depends) for c in solved.left):
+            return True
+        held = (
+            hints.get(root, {}).get(path)
+            for root, path in changed
+            if ANY in path and not isinstance(element_type(self.types.get(root, RealType(0, 0))), RealType)
+        )
+        stored = [v.form.leaves() for v in held if isinstance(v, Number)]
+        return any(leaves and not any(s.kind == "data" or s.reason for s in leaves) for leaves in stored)
+
     def _is_short(self, trips: Trips, steps: int) -> bool:
         count = trips.count.known if trips.count is not None and not trips.unsolved else None
         return count is not None and count <= TURNS_AT_MOST and count * steps <= TURN_STEPS_AT_MOST
@@ -434,7 +464,7 @@ class Looper(Caller):
             flow.returns += part.returns
             after = part.next
             for left in (*part.continues, *part.breaks):
-                after = self.join(after, left, statement.place)
+                after = joined(after, left, statement.place)
             if after is not None and statement.step is not None:
                 self.value(statement.step, after)
             flow.next = after
@@ -480,10 +510,7 @@ class Looper(Caller):
         final: Symbol,
         trips: Trips,
         values: Mapping[Symbol, Form],
-        memo: dict[Symbol, Form],
         left: tuple[Carry, ...],
-        condition: Form,
-        exits: list[Form],
     ) -> LoopInstance:
         swap = {symbol: form for symbol, form in values.items() if symbol.kind == "counter"}
         unsolved = tuple(substitute(c, swap) for c in trips.unsolved)
@@ -533,7 +560,6 @@ class Looper(Caller):
         state: State,
         entry: State,
         end: State | None,
-        at_exit: State,
         flow: Flow,
         moving: list[Moving],
         early: list[tuple[Moving, Form]],
@@ -564,10 +590,9 @@ class Looper(Caller):
         source = end if end is not None else (flow.breaks[0] if flow.breaks else entry)
         result = State({}, state.guards)
         result.written = state.written
-        swapped = source.substituted(values, memo)
-        for root, cells in swapped.cells.items():
-            if root in state.cells or self._outlives(root, state):
-                result.cells[root] = {p: replaced(v, at_last, memo_last) for p, v in cells.items()}
+        for root, cells in source.cells.items():
+            if root in state.cells or root[1] == 0:
+                result.cells[root] = replaced_cells(replaced_cells(cells, values, memo), at_last, memo_last)
         if not (statement.test_first or not broken):
             broken = True
         for m, form in [*((m, None) for m in moving), *early]:
@@ -600,9 +625,6 @@ class Looper(Caller):
             returns.append((gone, replaced(replaced(value, values, memo), at_last, memo_last)))
         return Flow(result, returns=returns)
 
-    def _outlives(self, root: Root, state: State) -> bool:
-        return root[1] == 0
-
     def _after(self, form: Form, statement: Loop, loop_number: int) -> Form:
         """What a carried variable has come to when the loop is over, where no formula says it."""
         swap: dict[Symbol, Form] = {}
@@ -614,17 +636,6 @@ class Looper(Caller):
                     made = unknown("", statement.place, self.open, symbol.depends)
                 swap[symbol] = symbol_form(replace(made, low=symbol.low, high=symbol.high))
         return substitute(form, swap)
-
-
-def _is_computed(
-    solved: Solved, changed: set[Cell], hints: Mapping[Root, Mapping[Path, Value]]
-) -> bool:
-    """Whether the loop computes something that no formula covers, and that is not data anyway."""
-    if any(not any(s.kind == "data" for s in carry.symbol.depends) for carry in solved.left):
-        return True
-    held = (hints.get(root, {}).get(path) for root, path in changed if ANY in path)
-    stored = [v.form.leaves() for v in held if isinstance(v, Number)]
-    return any(leaves and not any(s.kind == "data" or s.reason for s in leaves) for leaves in stored)
 
 
 def _decider(drawn: frozenset[Symbol]) -> str:

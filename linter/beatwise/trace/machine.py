@@ -1,8 +1,8 @@
 """Follows a kernel from its top function: every statement once, every loop body once, calls in place.
 
 Numbers are forms, so one pass over a loop body stands for all its iterations: what the body changes enters it as a
-symbol, and when the body has been followed, ``recurrence`` says what that symbol is in iteration k. A branch is followed
-both ways unless its condition is known. Nothing of the user's code is ever run.
+symbol, and when the body has been followed, ``recurrence`` says what that symbol is in iteration k. A branch is
+followed both ways unless its condition is known. Nothing of the user's code is ever run.
 """
 
 from __future__ import annotations
@@ -11,7 +11,7 @@ from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field, replace
 from itertools import count
 
-from beatwise.model.access import Access, Choice, Guard, LoopInstance, StreamOperation
+from beatwise.model.access import Access, Choice, Guard, StreamOperation
 from beatwise.model.form import (
     ONE,
     ZERO,
@@ -54,6 +54,7 @@ from beatwise.model.types import (
     VectorType,
     VoidType,
 )
+from beatwise.trace.integers import fitted
 from beatwise.trace.record import Recording
 from beatwise.trace.state import State, joined
 from beatwise.trace.values import (
@@ -121,7 +122,7 @@ class Argument:
 
 
 class Machine:
-    """The state of following one kernel. Its parts are split over this file, ``expressions``, ``calls`` and ``loops``."""
+    """The state of following one kernel. Its parts are here and in ``expressions``, ``calls`` and ``loops``."""
 
     def __init__(self, program: Program, arguments: Mapping[str, Argument], given: Mapping[str, int]) -> None:
         self.program, self.arguments, self.given = program, arguments, given
@@ -132,13 +133,12 @@ class Machine:
         self.scouting = 0
         self.steps = 0
         self.types: dict[Root, Type] = {}
-        self.constant: set[Root] = set()
+        self.names: dict[Root, str] = {}
         self.given_used: dict[str, Symbol] = {}
         self.statics: dict[Root, Variable] = {}  #: the static locals that were met
         self.notes: list[tuple[Place, str]] = []
         self._activations = count(1)
         self._loops = count(1)
-        self.loop_heads: dict[int, LoopInstance] = {}
         self.calls: list[str] = []
 
     # ------------------------------------------------------------------------------------------- bookkeeping
@@ -229,8 +229,6 @@ class Machine:
                 self._access(spot, "write", place, state)
             case LocalSpot():
                 if isinstance(value, Number):
-                    from beatwise.trace.integers import fitted
-
                     value = Number(fitted(value.form, spot.type))
                 state.write(spot, value)
             case ChoiceSpot():
@@ -306,7 +304,7 @@ class Machine:
                         StreamOperation(
                             place=place,
                             chain=self.frame.chain,
-                            function=self.process_name(),
+                            function=self.frame.function.name,
                             stream=name,
                             operation="read" if what == "read" else "write" if what == "write" else "test",
                             element=self._stream_index(spot, steps),
@@ -330,20 +328,13 @@ class Machine:
             case _:
                 return
 
-    def process_name(self) -> str:
-        """The function that a stream operation is told under: the outermost that is no helper of the dataflow region."""
-        return self.frame.function.name
-
     def stream_name(self, spot: LocalSpot) -> str:
         variable = self.variable_name(spot.root)
         return ".".join([variable, *(step for step in spot.path if isinstance(step, str))])
 
     def variable_name(self, root: Root) -> str:
+        """The variable's name in the source."""
         return self.names.get(root, root[0].rsplit("@", 1)[-1])
-
-    @property
-    def names(self) -> dict[Root, str]:
-        return self._names
 
     def _stream_index(self, spot: LocalSpot, steps: list[Form]) -> Form | None:
         if not steps:
@@ -418,26 +409,18 @@ class Machine:
             return self.run(statement.no, state) if statement.no is not None else Flow(state)
         place = statement.condition.place
         inverse = negation(condition)
-        yes = self.run(statement.yes, self._under(state, condition, place))
-        no = Flow(self._under(state, inverse, place))
+        yes = self.run(statement.yes, state.under(condition, place, self.open))
+        no = Flow(state.under(inverse, place, self.open))
         if statement.no is not None:
-            no = self.run(statement.no, self._under(state, inverse, place))
+            no = self.run(statement.no, state.under(inverse, place, self.open))
         flow.take(yes)
         flow.take(no)
         if yes.next is None and yes.breaks + yes.returns and no.next is not None:
             no.next.guards = _leaving(no.next.guards, len(state.guards))
         if no.next is None and no.breaks + no.returns and yes.next is not None:
             yes.next.guards = _leaving(yes.next.guards, len(state.guards))
-        flow.next = self.join(yes.next, no.next, place)
+        flow.next = joined(yes.next, no.next, place)
         return flow
-
-    def _under(self, state: State, condition: Form, place: Place) -> State:
-        """The state in a branch; a scouting run goes into dead ones, too."""
-        return state.under(condition, place, self.open)
-
-    def join(self, first: State | None, second: State | None, place: Place) -> State | None:
-        """Where two paths meet. In a scouting run, paths that a known condition parts still meet."""
-        return joined(first, second, place)
 
     def _switch(self, statement: Switch, state: State) -> Flow:
         """The labels are tried in turn, ``default`` last; then the bodies run in order, each falling into the next."""
@@ -462,7 +445,7 @@ class Machine:
         falling: State | None = None
         ended: list[State] = []
         for at, case in enumerate(statement.cases):
-            begin = self.join(entering.get(at), falling, place)
+            begin = joined(entering.get(at), falling, place)
             falling = None
             if begin is None:
                 continue
@@ -471,9 +454,9 @@ class Machine:
             flow.returns += part.returns
             ended += part.breaks
             falling = part.next
-        meets = self.join(falling, rest, place)
+        meets = joined(falling, rest, place)
         for end in reversed(ended):
-            meets = self.join(end, meets, place)
+            meets = joined(end, meets, place)
         flow.next = meets
         return flow
 
@@ -507,8 +490,6 @@ class Machine:
 
     def loop(self, statement: Loop, state: State) -> Flow:
         raise NotImplementedError
-
-    _names: dict[Root, str]
 
 
 def _leaving(guards: tuple[Guard, ...], since: int) -> tuple[Guard, ...]:

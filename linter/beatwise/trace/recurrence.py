@@ -10,11 +10,14 @@ from beatwise.model.form import (
     ZERO,
     Form,
     Symbol,
+    both,
     bounds,
     equal,
     floordiv,
     mask,
+    maximum,
     minimum,
+    negation,
     number,
     select,
     substitute,
@@ -180,7 +183,7 @@ def _ticking(
         if choice is None:
             continue
         condition, yes, no = choice
-        for again, onward, wraps in ((yes, no, condition), (no, yes, _inverse(condition))):
+        for again, onward, wraps in ((yes, no, condition), (no, yes, negation(condition))):
             stride = (onward - x).known
             if stride is None or stride <= 0 or again != carry.first or varies(carry.first, pending, inside):
                 continue
@@ -188,21 +191,9 @@ def _ticking(
             if period is None:
                 continue
             turn = floordiv(ticks, period)
-            clocks.append((_and_tick(tick, wraps), turn))
+            clocks.append((both(tick, wraps), turn))
             return carry.first + (ticks - turn * period) * stride
     return None
-
-
-def _inverse(condition: Form) -> Form:
-    from beatwise.model.form import negation
-
-    return negation(condition)
-
-
-def _and_tick(tick: Form, wraps: Form) -> Form:
-    from beatwise.model.form import both
-
-    return both(tick, wraps)
 
 
 def _on_tick(step: Form, x: Form, tick: Form) -> Form | None:
@@ -219,13 +210,13 @@ def _on_tick(step: Form, x: Form, tick: Form) -> Form | None:
     condition, yes, no = choice
     if condition == tick and no == x:
         return yes
-    if _inverse(condition) == tick and yes == x:
+    if negation(condition) == tick and yes == x:
         return no
     return None
 
 
 def _period(wraps: Form, x: Form, first: Form, stride: int) -> Form | None:
-    """Ticks from ``first`` until the wrap, for ``x + stride == end``, ``x == end - stride``, ``end <= x + stride``, ..."""
+    """Ticks from ``first`` until the wrap, for ``x + stride == end``, ``x == end - stride``, ``end <= x + stride``."""
     for name in ("eq", "lt"):
         sides = _operands(wraps, name)
         if sides is None:
@@ -312,8 +303,6 @@ def _first_false(condition: Form, loop_counter: Symbol) -> Form | None:
 
 
 def _at_least_zero(count: Form) -> Form:
-    from beatwise.model.form import maximum
-
     known = count.known
     if known is not None:
         return number(max(0, known))

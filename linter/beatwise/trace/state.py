@@ -71,7 +71,7 @@ class State:
         parts = {key[len(path) :]: value for key, value in cells.items() if key[: len(path)] == path}
         if parts:
             return Record(parts)
-        return self._read_summary(spot, cells, path)
+        return self._read_summary(cells, path)
 
     def _read_some(self, spot: LocalSpot, cells: Cells, path: Path, place: Place) -> Value | None:
         """An element whose index is not a plain number."""
@@ -97,7 +97,7 @@ class State:
         pointers = {at: value.spot for at, value in found.items() if isinstance(value, Pointer)}
         if pointers and not hazy:
             return Pointer(picked(index, pointers, place))
-        summary = self._read_summary(spot, cells, path)
+        summary = self._read_summary(cells, path)
         pieces = [value.form for value in found.values() if isinstance(value, Number)]
         if isinstance(summary, Number):
             pieces.append(summary.form)
@@ -105,7 +105,7 @@ class State:
             return summary
         return Number(depending(index, *pieces)) if pieces else None
 
-    def _read_summary(self, spot: LocalSpot, cells: Cells, path: Path) -> Value | None:
+    def _read_summary(self, cells: Cells, path: Path) -> Value | None:
         """What some element may hold, or what a part of a value that is known only as a whole depends on."""
         pieces: list[Form] = []
         for key, value in cells.items():
@@ -158,7 +158,7 @@ class State:
         twin = State({}, self.guards)
         twin.written = self.written
         for root, cells in self.cells.items():
-            twin.cells[root] = {path: replaced(value, values, memo) for path, value in cells.items()}
+            twin.cells[root] = replaced_cells(cells, values, memo)
         return twin
 
 
@@ -202,6 +202,12 @@ def forms_of_spot(spot: Spot) -> Iterator[Form]:
             yield spot.depends
 
 
+def replaced_cells(cells: Cells, values: Mapping[Symbol, Form], memo: dict[Symbol, Form]) -> Cells:
+    """The cells with symbols replaced; the very same where there is nothing to replace."""
+    found = {path: replaced(value, values, memo) for path, value in cells.items()}
+    return cells if all(found[path] is value for path, value in cells.items()) else found
+
+
 def replaced(value: Value, values: Mapping[Symbol, Form], memo: dict[Symbol, Form]) -> Value:
     """The value with symbols replaced."""
     match value:
@@ -209,7 +215,8 @@ def replaced(value: Value, values: Mapping[Symbol, Form], memo: dict[Symbol, For
             new = substitute(form, values, memo)
             return value if new is form else Number(new)
         case Pointer(spot):
-            return Pointer(replaced_spot(spot, values, memo))
+            new_spot = replaced_spot(spot, values, memo)
+            return value if new_spot is spot else Pointer(new_spot)
         case Record(parts):
             return Record({path: replaced(part, values, memo) for path, part in parts.items()})
         case Closure():
@@ -217,6 +224,8 @@ def replaced(value: Value, values: Mapping[Symbol, Form], memo: dict[Symbol, For
 
 
 def replaced_spot(spot: Spot, values: Mapping[Symbol, Form], memo: dict[Symbol, Form]) -> Spot:
+    if all(values.keys().isdisjoint(form.leaves()) for form in _all_forms(spot)):
+        return spot
     match spot:
         case MemorySpot():
             return MemorySpot(
@@ -235,6 +244,14 @@ def replaced_spot(spot: Spot, values: Mapping[Symbol, Form], memo: dict[Symbol, 
             return ChoiceSpot(arms, substitute(spot.selector, values, memo), spot.place)
         case LostSpot():
             return LostSpot(spot.reason, substitute(spot.depends, values, memo), spot.argument)
+
+
+def _all_forms(spot: Spot) -> Iterator[Form]:
+    if isinstance(spot, ChoiceSpot):
+        for condition, arm in spot.arms:
+            yield condition
+            yield from _all_forms(arm)
+    yield from forms_of_spot(spot)
 
 
 def joined(first: State | None, second: State | None, place: Place) -> State | None:

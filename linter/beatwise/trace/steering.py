@@ -1,4 +1,4 @@
-"""Destinations that branches pick: stores (or loads) of different arguments of which data lets one run, not the others."""
+"""Destinations that branches pick: stores (or loads) of different arguments of which data lets only one run."""
 
 from __future__ import annotations
 
@@ -14,8 +14,8 @@ from beatwise.trace.values import compared
 def steered(accesses: Sequence[Access]) -> tuple[Access, ...]:
     """The accesses, with a choice on those that a branch on data picks among different arguments.
 
-    ``if (s == 0) a[i] = x; else b[i] = x;`` is the choice that ``(s == 0 ? a : b)[i] = x`` is. Two accesses exclude each
-    other when one's guard is the other's negation, or compares the same value with another constant.
+    ``if (s == 0) a[i] = x; else b[i] = x;`` is the choice that ``(s == 0 ? a : b)[i] = x`` is. Two accesses exclude
+    each other when one's guard is the other's negation, or compares the same value with another constant.
     """
     groups: dict[object, list[int]] = defaultdict(list)
     for at, access in enumerate(accesses):

@@ -31,7 +31,7 @@ DEEPEST = 20_000  #: Python frames: a deep nest of calls and expressions is foll
 class Tracer(Looper):
     """A machine that starts at a top function."""
 
-    def note_stream(self, variable: Variable, root: Root) -> None:
+    def note_stream(self, variable: Variable) -> None:
         found = stream_in(variable.type)
         if found is None:
             return
@@ -78,7 +78,6 @@ def trace_program(program: Program, given: Mapping[str, int]) -> tuple[Trace, ..
 def _trace(program: Program, top: Function, given: Mapping[str, int]) -> Trace:
     ports, arguments = interfaces_of(top)
     machine = Tracer(program, arguments, given)
-    machine._names = {}
     frame = Frame(top, 0, {}, None, ())
     machine.frame = frame
     state = State({}, ())
@@ -91,8 +90,8 @@ def _trace(program: Program, top: Function, given: Mapping[str, int]) -> Trace:
         root: Root = (variable.key, 0)
         frame.roots[variable.key] = root
         machine.types[root] = variable.type
-        machine._names[root] = variable.name
-        machine.note_stream(variable, root)
+        machine.names[root] = variable.name
+        machine.note_stream(variable)
         kind = variable.type
         if variable.name in arguments:
             held: Value = Pointer(memory_of(variable.name, kind))

@@ -1,4 +1,4 @@
-"""What an expression can be while a kernel is followed: a number, a pointer, a record, a function; and where it can lie.
+"""What an expression can be while a kernel is followed (a number, a pointer, a record, a function) and where it lies.
 
 A *spot* is a place that can be loaded from or stored to: in the memory behind an interface (``MemorySpot``), in an
 on-chip variable (``LocalSpot``), one of several picked by a condition (``ChoiceSpot``), or lost (``LostSpot``).
@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass, replace
 
-from beatwise.model.form import ZERO, Form, both, negation, number, opaque, select, symbol_form
+from beatwise.model.form import ZERO, Form, both, equal, negation, number, opaque, select, symbol_form
 from beatwise.model.place import Place
 from beatwise.model.types import ArrayType, Type, UnknownType, VoidType
 
@@ -134,7 +134,7 @@ def recast(spot: Spot, pointee: Type) -> Spot:
             return spot
 
 
-def element(spot: Spot, index: Form, kind: Type, count: int | None = None) -> Spot:
+def element(spot: Spot, index: Form, kind: Type) -> Spot:
     """``spot[index]`` where the spot is an array or a vector; ``kind`` is the element's type."""
     match spot:
         case MemorySpot():
@@ -247,8 +247,6 @@ def compared(condition: Form) -> Form:
 
 def picked(selector: Form, spots: Mapping[int, Spot], place: Place) -> Spot:
     """The spot that an index picks out of an array of pointers or streams."""
-    from beatwise.model.form import equal
-
     arms = tuple((equal(selector, number(index)), spot) for index, spot in spots.items())
     arms = tuple((condition, spot) for condition, spot in arms if condition.known != 0)
     if len(arms) == 1:

@@ -1,8 +1,8 @@
 """Walks through a loop nest number by number, for the accesses that no formula covers.
 
 Loops run as the source says: counters, carried variables, exits, guards. What only the data knows is drawn at random,
-the same draw for the same iteration. The walk stops after ``STEPS_AT_MOST`` iterations; what it has seen by then stands for
-all.
+the same draw for the same iteration. The walk stops after ``STEPS_AT_MOST`` iterations; what it has seen by then stands
+for all.
 """
 
 from __future__ import annotations
@@ -98,6 +98,7 @@ class Walker:
         self.coins = dict(coin for g in self.drawn for symbol in _comparisons(g) for coin in _sides(symbol))
         self.coin_loops = {coin: _tossed_in(coin) for coin in self.coins}
         self.by_loop = _drawn_in(access)
+        self.oldest = min((loop.counter.number for loop in access.loops), default=0)
 
     def walk(self) -> Seen:
         try:
@@ -207,7 +208,7 @@ class Walker:
 
     def _mixed(self, symbol: Symbol) -> int:
         """64 bits that look random (the mixing steps of SplitMix64: Steele, Lea and Flood, OOPSLA 2014)."""
-        state = symbol.number
+        state = symbol.number - self.oldest  # the same whatever was analysed before
         for loop in self.access.loops:
             state = (state + self.values.get(loop.counter, 0) + 1) * 0x9E3779B97F4A7C15 & 0xFFFFFFFFFFFFFFFF
             state = (state ^ state >> 30) * 0xBF58476D1CE4E5B9 & 0xFFFFFFFFFFFFFFFF

@@ -35,8 +35,9 @@ class Trips:
 def walk(access: Access, given: Mapping[str, int]) -> Walk:
     """The walk of one access.
 
-    ``given`` are sizes by parameter name. A run's length in elements follows from the trips of the loops whose steps join up;
-    an access that data guards is expected to run in half of the cases, so that its runs are 1/(1 - 1/2) = 2 elements.
+    ``given`` are sizes by parameter name. A run's length in elements follows from the trips of the loops whose steps
+    join up; an access that data guards is expected to run in half of the cases, so that its runs are 1/(1 - 1/2) = 2
+    elements.
     """
     if access.unresolved is not None:
         return Walk("unresolved", None, None, "constant", None, access.unresolved)
@@ -91,7 +92,7 @@ def _leaves(access: Access, loop: LoopInstance) -> bool:
 
 
 def _last_of(access: Access, left: Sequence[LoopInstance], given: Mapping[str, int]) -> Walk:
-    """The walk of an access that runs once for each time that ``left`` are run through, at a place that data decides."""
+    """The walk of an access that runs once for each time that ``left`` are run through, where data decides."""
     numbers = {loop.number for loop in left}
     own = {loop.counter for loop in left} | {r.symbol for loop in left for r in loop.recurrences}
     outer = replace(
@@ -99,7 +100,9 @@ def _last_of(access: Access, left: Sequence[LoopInstance], given: Mapping[str, i
         loops=tuple(loop for loop in access.loops if loop.number not in numbers),
         guards=tuple(guard for guard in access.guards if not numbers.intersection(guard.loops)),
     )
-    if not own & access.offset.leaves() and not any(numbers.intersection(redrawn_in(s)) for s in access.offset.leaves()):
+    if not own & access.offset.leaves() and not any(
+        numbers.intersection(redrawn_in(s)) for s in access.offset.leaves()
+    ):
         return walk(outer, given)
     if not outer.loops:
         return Walk("single", None, 1.0, "data", 1.0, access.taken)
@@ -246,7 +249,7 @@ def _boxed(
             continue
         value = compiled(stride)(dict(sizes)) if not _drawn(stride) else None
         if pattern == "single":
-            pattern, step = _pattern(stride, value, access.element_bytes, t)
+            pattern, step = _pattern(stride, value, access.element_bytes)
         joins = (
             whole
             and not (copied and t is not trips[-1])
@@ -281,7 +284,7 @@ def _boxed(
     )
 
 
-def _pattern(stride: Form, value: int | None, element: int, t: Trips) -> tuple[Pattern, int | None]:
+def _pattern(stride: Form, value: int | None, element: int) -> tuple[Pattern, int | None]:
     if not stride.terms:
         return "repeated", 0
     known = stride.known if stride.known is not None else value if all(map(_is_given, stride.leaves())) else None
@@ -378,7 +381,7 @@ def _by_walking(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, i
 
 
 def _multiples(access: Access, trips: Sequence[Trips]) -> tuple[int, int]:
-    """What the start and the length of the rows that the innermost loop walks are known to be multiples of, in bytes."""
+    """What the start and length of the rows that the innermost loop walks are known to be multiples of, in bytes."""
     rest, length = access.offset, access.element_bytes
     if trips:
         inner = trips[-1]
@@ -415,15 +418,15 @@ def _seen_pattern(steps: Mapping[int, int], element: int) -> tuple[Pattern, int 
     if steps.get(element, 0) * 5 >= total * 2:
         return "sequential", element
     step, times = max(steps.items(), key=lambda item: (item[1], -abs(item[0])))
-    if times * 4 < total * 3:
+    if step == 0 and times * 2 >= total:
+        return "repeated", 0
+    if times * 3 < total * 2:
         return "irregular", None
-    if step == -element:
-        return "descending", -element
-    return ("repeated", 0) if step == 0 else ("strided", step)
+    return ("descending", step) if step == -element else ("strided", step)
 
 
 def _rows(trips: Sequence[Trips]) -> dict[Symbol, int]:
-    """Row pointers: data of which the next one ends a loop that this one begins. Rows are taken to follow each other."""
+    """Row pointers: data of which the next one ends a loop that this one begins. Rows are taken to join each other."""
     found: dict[Symbol, int] = {}
     for t in trips:
         if t.form is None:
