@@ -22,7 +22,7 @@ said until this is settled, or curing it cures what stands later.
 ==  ==========================  ======================================  ==========================================
 
 Three rules speak of the kernel, and beside the others: `shared-port` (what arguments take from each other),
-`assumed-size` and `invented-name` (what the rest hangs on).
+`assumed-size` and `invented-name` (what the rest depends on).
 """
 
 from __future__ import annotations

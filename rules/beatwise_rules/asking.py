@@ -102,7 +102,7 @@ def ask(
     """
     wanted = levels or {}
     told = [*_joined(_by_cause(facts)), *_of_the_kernel(facts)]
-    told = [_quieter(weighed(finding, facts, thresholds), told) for finding in told]
+    told = [_quieter(finding, told) for finding in weighed(told, facts, thresholds)]
     told = [
         replace(finding, level=setting)
         if (setting := wanted.get(finding.rule)) is not None and setting != "off"

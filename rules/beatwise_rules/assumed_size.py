@@ -1,6 +1,6 @@
 """Sizes that nobody stated were taken as 1024.
 
-Whether rows join, how long a run is and how much a loop moves hang on sizes. Where a size is an argument of the
+Whether rows join, how long a run is and how much a loop moves depend on sizes. Where a size is an argument of the
 kernel, and neither a directive nor the command line says what it usually is, 1024 is taken for the trips of a loop,
 and everything that follows from it says so.
 
@@ -69,9 +69,9 @@ def find(facts: Facts) -> Iterator[Finding]:
         argument=None,
         interface=None,
         message=f"{what} {'is' if len(names) == 1 else 'are'} not known: {ASSUMED_TRIPS} is taken, "
-        f"and the accesses on {where} hang on it.",
+        f"and the accesses on {where} depend on it.",
         because=tuple(_evidence(loop) for loop in loops[:SHOWN])
-        or (f"The accesses on {lines(traffic.access.place.line for traffic in assumed)} hang on it.",),
+        or (f"The accesses on {lines(traffic.access.place.line for traffic in assumed)} depend on it.",),
         instead=f"Say what is usual: {' '.join(f'`--given {name}=...`' for name in names)}."
         if names
         else "Write a trip-count directive into these loops.",
@@ -102,5 +102,5 @@ def _evidence(loop: LoopInstance) -> str:
     if loop.why_unknown or loop.trips is None:
         why = f": {loop.why_unknown}" if loop.why_unknown else ""
         return f"How often {the_loop(loop)} runs is not known{why}."
-    hangs = [symbol.name for symbol in loop.trips.leaves() if symbol.kind in ("parameter", "data")]
-    return f"How often {the_loop(loop)} runs hangs on {listed(hangs or [str(loop.trips)])}."
+    hangs = [symbol.name for symbol in sorted(loop.trips.leaves(), key=lambda symbol: symbol.number) if symbol.kind in ("parameter", "data")]
+    return f"How often {the_loop(loop)} runs depends on {listed(hangs or [str(loop.trips)])}."

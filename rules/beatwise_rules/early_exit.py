@@ -76,7 +76,7 @@ def _told(facts: Facts, site: list[Traffic]) -> Finding:
         message=f"{quoted(access.argument)} {PASSIVE[access.direction]} in a loop that may end after any element, "
         f"as {decider} decides.",
         because=(
-            f"When {the_loop(loop)} ends hangs on {decider}{on_line}: a burst could not say how long it is.",
+            f"When {the_loop(loop)} ends depends on {decider}{on_line}: a burst could not say how long it is.",
             f"Each iteration asks for {size(access.element_bytes)}; a burst of this port holds "
             f"{size(burst_bytes(facts, worst))}.",
         ),

@@ -45,7 +45,7 @@ def trouble(
         loss_gbps=worst.loss_gbps,
         seconds_saved=seconds_saved(site),
     )
-    return weighed(finding, facts)
+    return weighed([finding], facts)[0]
 
 
 def seconds_saved(site: Sequence[Traffic]) -> float | None:

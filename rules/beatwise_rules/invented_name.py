@@ -2,7 +2,7 @@
 
 The sources include something that was not given. So that the rest can still be read, a stand-in is declared for what
 is missing: a type of no known size, a constant of no known value, a function that does nothing known. Nothing is
-computed from it, so an address or a loop bound that hangs on it is unknown too.
+computed from it, so an address or a loop bound that depends on it is unknown too.
 
 It matters when it is a size or a type that memory is laid out by; such a stand-in is told as a warning, any other as
 a note.
@@ -70,7 +70,7 @@ def _told(facts: Facts, name: str, uses: list[Invention]) -> Finding:
     evidence = [f"{quoted(name)} is used on {lines(use.place.line for use in uses)}: {CONSEQUENCE[first.what]}."]
     if hanging:
         what = f"{listed(access.argument for access in hanging)} on {lines(access.place.line for access in hanging)}"
-        evidence.append(f"An address, a length or a condition of {what} hangs on it.")
+        evidence.append(f"An address, a length or a condition of {what} depends on it.")
     return Finding(
         rule="invented-name",
         level="warning" if hanging else "note",

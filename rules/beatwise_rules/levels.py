@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, replace
 
 from beatwise.model.finding import Facts, Finding, Level
@@ -23,12 +23,20 @@ DEFAULTS = Thresholds()
 
 def share_of_bytes(facts: Facts, traffic: Iterable[Traffic]) -> float | None:
     """The share of the kernel's bytes that these accesses move; None where a size is not known."""
-    moved = [item.bytes_moved for item in traffic]
-    total = [item.bytes_moved for item in facts.traffic]
-    if None in moved or None in total:
+    moved, everything = _bytes(traffic), _bytes(facts.traffic)
+    if moved is None or everything is None:
         return None
-    everything = sum(value for value in total if value is not None)
-    return sum(value for value in moved if value is not None) / everything if everything else 0.0
+    return moved / everything if everything else 0.0
+
+
+def _bytes(traffic: Iterable[Traffic]) -> float | None:
+    """What the accesses move together; None where a size is not known."""
+    total = 0.0
+    for item in traffic:
+        if item.bytes_moved is None:
+            return None
+        total += item.bytes_moved
+    return total
 
 
 def level(loss_share: float, byte_share: float | None, thresholds: Thresholds = DEFAULTS) -> Level:
@@ -56,9 +64,23 @@ def accesses_of(finding: Finding, facts: Facts) -> list[Traffic]:
     return here or [traffic for traffic in facts.traffic if traffic.access.interface == finding.interface]
 
 
-def weighed(finding: Finding, facts: Facts, thresholds: Thresholds = DEFAULTS) -> Finding:
-    """The finding with the level that its loss calls for; one without rates keeps the level its rule gave it."""
-    if finding.loss_gbps is None or not finding.could_gbps:
-        return finding
-    byte_share = share_of_bytes(facts, accesses_of(finding, facts))
-    return replace(finding, level=level(finding.loss_gbps / finding.could_gbps, byte_share, thresholds))
+def weighed(findings: Sequence[Finding], facts: Facts, thresholds: Thresholds = DEFAULTS) -> list[Finding]:
+    """The findings with the levels that their losses call for; one without rates keeps the level its rule gave it.
+
+    The same trouble of one argument at many places (an unrolled loop, a macro) counts with all the bytes it holds up.
+    """
+    everything = _bytes(facts.traffic)
+    held: dict[tuple[str, str | None, str | None], float | None] = {}
+    for finding in findings:
+        own, key = _bytes(accesses_of(finding, facts)), (finding.rule, finding.argument, finding.interface)
+        before = held.get(key, 0.0)
+        held[key] = None if own is None or before is None else own + before
+    result = []
+    for finding in findings:
+        if finding.loss_gbps is None or not finding.could_gbps:
+            result.append(finding)
+            continue
+        own = held[finding.rule, finding.argument, finding.interface]
+        share = None if own is None or everything is None else own / everything if everything else 0.0
+        result.append(replace(finding, level=level(finding.loss_gbps / finding.could_gbps, share, thresholds)))
+    return result

@@ -2,7 +2,7 @@
 
 Arguments that name the same bundle share one AXI port: one request path and one data path for each direction, one
 memory channel behind it. Two arrays read in one loop get half each; an array read beside one written does not wait
-for the port, but both use the same channel. Tools make one bundle of all arguments where none is named.
+for the port, but both use the same channel.
 
 It matters when the loop, or processes that run side by side, need the arguments in the same iterations. It does not
 where one loop loads the first and a later one the second: they take turns anyway.
@@ -117,7 +117,7 @@ def _told(facts: Facts, port: Interface, companies: Sequence[list[Traffic]]) -> 
         could_gbps=alone,
         loss_gbps=max(0.0, alone - now),
     )
-    return weighed(finding, facts)
+    return weighed([finding], facts)[0]
 
 
 def _evidence(group: Sequence[Traffic]) -> str:

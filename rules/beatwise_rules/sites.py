@@ -1,4 +1,4 @@
-"""What the rules ask of an access: which loop moves it, what data it hangs on, which others stand at the same site."""
+"""What the rules ask of an access: which loop moves it, what data it depends on, which others stand at the same site."""
 
 from __future__ import annotations
 
@@ -7,6 +7,7 @@ from collections.abc import Callable, Iterable, Iterator
 from beatwise.model.access import Access, LoopInstance
 from beatwise.model.finding import Facts
 from beatwise.model.form import Form, Symbol, bounds
+from beatwise.model.place import Place
 from beatwise.model.traffic import Block, Traffic
 
 PLAUSIBLE_BYTES = 1 << 30  #: what a 32-bit index could reach says nothing about the size of an array
@@ -18,12 +19,33 @@ def sites(facts: Facts, holds: Callable[[Traffic], bool]) -> Iterator[list[Traff
     A load and a store at one place (``x[k] += 1``), and a helper called twice on one argument, are one site.
     """
     groups: dict[tuple[str, int, str], list[Traffic]] = {}
+    again = loaded_again(facts)
     for traffic in facts.traffic:
-        if goes_on(traffic) and holds(traffic):
+        if goes_on(traffic) and holds(traffic) and traffic.access.order not in again:
             place = traffic.access.place
             groups.setdefault((place.file, place.offset, traffic.access.argument), []).append(traffic)
     for group in groups.values():
         yield sorted(group, key=lambda traffic: -traffic.loss_gbps)
+
+
+def loaded_again(facts: Facts) -> set[int]:
+    """The guarded loads (by their order) of an element that the same iteration has loaded before in any case.
+
+    ``if (x[k] > limit) y[n++] = x[k];``: the value is at hand, no tool fetches it twice. Not where the argument is also
+    stored to in between.
+    """
+    written = {traffic.access.argument for traffic in facts.traffic if traffic.access.direction == "write"}
+    first: dict[tuple[str, str, Form, tuple[int, ...], tuple[Place, ...]], Access] = {}
+    found: set[int] = set()
+    for access in sorted((traffic.access for traffic in facts.traffic), key=lambda access: access.order):
+        if access.direction == "write" or access.argument in written or access.unresolved is not None:
+            continue
+        key = (access.argument, access.covers, access.offset, tuple(loop.number for loop in access.loops), access.chain)
+        earlier = first.setdefault(key, access)
+        shared = len(earlier.guards)
+        if len(access.guards) > shared and earlier.guards == access.guards[:shared]:
+            found.add(access.order)
+    return found
 
 
 def goes_on(traffic: Traffic) -> bool:
@@ -55,7 +77,7 @@ def working_loop(access: Access) -> LoopInstance | None:
 
 
 def data_in(form: Form) -> tuple[Symbol, ...]:
-    """The data that a form is made of, in the order of the source; what it only hangs on where there is no other."""
+    """The data that a form is made of, in the order of the source; what it only depends on where there is no other."""
     found = _made_of(form) or {symbol for symbol in form.leaves() if symbol.kind == "data"}
     return tuple(sorted(found, key=lambda symbol: symbol.number))
 

@@ -34,6 +34,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
+from beatwise.model.access import Access
 from beatwise.model.finding import Facts, Finding
 from beatwise.model.traffic import Traffic
 from beatwise_rules.wording import PASSIVE, quoted, sentence
@@ -60,7 +61,7 @@ def find(facts: Facts) -> Iterator[Finding]:
             place=place,
             argument=access.argument or None,
             interface=access.interface or None,
-            message=f"{_who(access.argument)} {PASSIVE[access.direction]} at an address that could not be followed.",
+            message=_message(access),
             because=(
                 f"{sentence(reason).rstrip('.')}.",
                 "Its runs and its rate are unknown; the kernel's figures leave it out.",
@@ -75,5 +76,8 @@ def is_unresolved(traffic: Traffic) -> bool:
     return traffic.access.unresolved is not None or traffic.walk.pattern == "unresolved"
 
 
-def _who(argument: str) -> str:
-    return quoted(argument) if argument else "Memory"
+def _message(access: Access) -> str:
+    who = quoted(access.argument) if access.argument else "memory"
+    if access.given_away:
+        return f"What becomes of {who} on line {access.place.line} is not known: it is handed on."
+    return f"{sentence(who)} {PASSIVE[access.direction]} at an address that could not be followed."

@@ -120,7 +120,7 @@ def test_an_argument_given_to_a_function_without_a_body() -> None:
         before="void consume(int *, int);",
     )
     assert found == lines("""
-        read  out[0]  1 B  unresolved: consume, which it is passed to, has no body here
+        write  out[0]  4 B  unresolved: it is passed to `consume`, which has no body here
     """)
 
 

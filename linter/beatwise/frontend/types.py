@@ -218,7 +218,7 @@ class Types:
             pointee = lib.clang_getPointeeType(given)
             if pointee.kind in (FUNCTION, FUNCTION_NO_PROTO):
                 return CallableType()
-            return PointerType(self.read(pointee), self.is_volatile(pointee))
+            return PointerType(self.read(pointee), self.is_volatile(pointee), constant=self.is_constant(pointee))
         if kind in (LVALUE_REFERENCE, RVALUE_REFERENCE):
             return ReferenceType(self.read(lib.clang_getPointeeType(given)))
         if kind == CONSTANT_ARRAY:

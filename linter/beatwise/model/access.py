@@ -101,6 +101,7 @@ class Access:
     volatile: bool = False
     manual: bool = False  #: an explicit burst request
     unresolved: str | None = None
+    given_away: bool = False  #: handed to a function without a body here; the direction is what its type allows
     taken: str | None = None  #: what had to be taken for granted about it
     process: str | None = None  #: the dataflow process it runs in
     array_bytes: int | None = None  #: size of the argument, when its type or directive says it

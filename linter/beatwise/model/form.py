@@ -25,8 +25,8 @@ class Symbol:
     """A quantity that a form is made of. Two with one ``number`` are the same, even where one knows more of itself.
 
     ``counter``: 0, 1, 2, ... of the loop ``loop``. ``parameter``: a scalar argument of the top function. ``data``: read
-    from memory, a stream or a table (``name`` says which, ``at`` the byte offset it was read from, when known); drawn
-    anew in every iteration of ``loops``.
+    from memory, a stream or a table (``name`` says which); drawn anew in every iteration of ``loops``, or, where ``at``
+    is set, of those in which this byte offset changes.
     ``carried``: what a variable holds when an iteration of ``loop`` starts, where no closed form was found.
     ``unknown``: could not be followed, ``reason`` says why. ``operation``: ``name`` applied to ``operands``.
     """
@@ -158,14 +158,16 @@ class Form:
 
 
 def redrawn_in(symbol: Symbol) -> set[int]:
-    """The loops of which a new iteration gives the symbol a new value (that of a parameter never changes)."""
-    found = set(symbol.loops)
-    if symbol.loop is not None:
-        found.add(symbol.loop)
-    for other in symbol.depends:
-        found.update(other.loops)
-        if other.loop is not None:
-            found.add(other.loop)
+    """The loops of which a new iteration gives the symbol a new value (that of a parameter never changes).
+
+    What lies at a known place of memory that is only read changes no more often than the place.
+    """
+    found: set[int] = set()
+    for each in (symbol, *symbol.depends):
+        if each.at is None:
+            found.update(each.loops)
+        if each.loop is not None:
+            found.add(each.loop)
     return found
 
 
@@ -405,8 +407,8 @@ def floordiv(value: Form, divisor: Form) -> Form:
     whole = Form({m: f // by for m, f in value.terms.items() if f % by == 0 and m})
     rest = Form({m: f for m, f in value.terms.items() if f % by or not m})
     low, high = bounds(rest)
-    if low is not None and high is not None and low // by == high // by:
-        return whole + low // by
+    if low is not None and high is not None and low // by == high // by and (low < high or rest.known is not None):
+        return whole + low // by  # where a given size alone decides, it stays to be seen in the form
     if len(rest.terms) == 1 and rest.constant == 0:
         ((monomial, factor),) = rest.terms.items()
         if factor == 1 and len(monomial) == 1 and monomial[0].name == "floordiv" and monomial[0].kind == "operation":

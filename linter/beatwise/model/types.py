@@ -40,6 +40,7 @@ class PointerType:
     to: Type
     volatile: bool = False
     bytes: int = 8
+    constant: bool = False  #: what it points to can't be written through it
 
 
 @dataclass(frozen=True, slots=True)

@@ -297,8 +297,10 @@ class Caller(Builtins):
         if call.name in SILENT:
             return
         if isinstance(spot, MemorySpot) and not self.scouting:
-            lost = LostSpot(f"{call.name}, which it is passed to, has no body here", spot.offset, spot.argument)
-            self._lost_access(lost, "read", call.place, state)
+            kept = bare(argument.type)
+            constant = isinstance(kept, PointerType) and kept.constant
+            lost = LostSpot(f"it is passed to `{call.name}`, which has no body here", spot.offset, spot.argument)
+            self._lost_access(lost, "read" if constant else "write", call.place, state, given_away=True)
         if isinstance(spot, LocalSpot) and not isinstance(bare(argument.type), StreamType | CallableType):
             pointed = bare(argument.type)
             if isinstance(pointed, PointerType) and isinstance(pointed.to, IntType | RealType):

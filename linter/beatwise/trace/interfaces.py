@@ -36,7 +36,11 @@ def interfaces_of(function: Function) -> tuple[tuple[Interface, ...], dict[str, 
         bundle = (master.options.get("bundle") if master is not None else None) or parameter.name
         ports.setdefault(bundle, []).append((parameter, master))
         arguments[parameter.name] = Argument(
-            parameter.name, bundle, is_volatile(parameter.type), _array_bytes(parameter.type, master)
+            parameter.name,
+            bundle,
+            is_volatile(parameter.type),
+            element_type(parameter.type).bytes or 1,
+            _array_bytes(parameter.type, master),
         )
     return tuple(_port(name, members, config) for name, members in ports.items()), arguments
 

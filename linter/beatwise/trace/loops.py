@@ -368,7 +368,7 @@ class Looper(Caller):
     def _early_trips(
         self, statement: Loop, entry: State, moving: list[Moving], early: list[tuple[Moving, Form]], provisional: Symbol
     ) -> Form | None:
-        """How often the loop runs, when its condition hangs on nothing that the body changes."""
+        """How often the loop runs, when its condition depends on nothing that the body changes."""
         if statement.condition is None or not statement.test_first:
             return None
         mark = self.record.mark()

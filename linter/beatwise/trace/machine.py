@@ -118,6 +118,7 @@ class Argument:
     name: str
     interface: str
     volatile: bool
+    element_bytes: int
     array_bytes: int | None
 
 
@@ -279,17 +280,20 @@ class Machine:
             )
         )
 
-    def _lost_access(self, spot: LostSpot, direction: str, place: Place, state: State) -> None:
+    def _lost_access(
+        self, spot: LostSpot, direction: str, place: Place, state: State, *, given_away: bool = False
+    ) -> None:
         """An access whose address is lost is told as unresolved; one whose argument is lost, too, is noted."""
         if self.scouting:
             return
         if spot.argument is None:
             self.notes.append((place, f"a {direction} is left out: {spot.reason}"))
             return
-        kept = MemorySpot(spot.argument, spot.depends, 1, VoidType())
+        size = self.arguments[spot.argument].element_bytes
+        kept = MemorySpot(spot.argument, spot.depends, size, VoidType())
         self._access(kept, direction, place, state)
         access, loops = self.record.accesses[-1]
-        self.record.accesses[-1] = (replace(access, unresolved=spot.reason), loops)
+        self.record.accesses[-1] = (replace(access, unresolved=spot.reason, given_away=given_away), loops)
 
     def stream_operation(self, spot: Spot, what: str, place: Place, state: State, *, blocking: bool = True) -> None:
         """One read, write or test of a FIFO."""

@@ -6,7 +6,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass, field, replace
 
 from beatwise.model.access import Access, Choice, Guard, LoopInstance, Recurrence, Stream, StreamOperation
-from beatwise.model.form import Form, Symbol, substitute
+from beatwise.model.form import Form, Symbol, substitute, symbol_form
 
 
 @dataclass
@@ -67,6 +67,14 @@ class Recording:
                 until=tuple(substitute(condition, values, memo) for condition in loop.until),
                 exits=tuple(substitute(condition, values, memo) for condition in loop.exits),
             )
+
+    def forget_places_of_written(self) -> None:
+        """What was loaded from an argument that is also stored to may be another value each time."""
+        written = {access.argument for access, _ in self.accesses if access.direction == "write"}
+        forms = [form for access, _ in self.accesses for form in (access.offset, *(g.condition for g in access.guards))]
+        stale = {s for form in forms for s in form.leaves() if s.at is not None and s.name in written}
+        if stale:
+            self.substitute((0, 0), {s: symbol_form(replace(s, at=None)) for s in stale}, {})
 
     def finished(self) -> tuple[tuple[Access, ...], tuple[StreamOperation, ...]]:
         """The record with the loops in place."""

@@ -123,6 +123,7 @@ def _trace(program: Program, top: Function, given: Mapping[str, int]) -> Trace:
         )
     except RecursionError:
         problems.append(Problem(top.place.file, top.place.line, f"{top.name}: nested too deeply to be followed"))
+    machine.record.forget_places_of_written()
     accesses, operations = machine.record.finished()
     accesses = steered(accesses)
     parameters.update(machine.given_used)

@@ -47,7 +47,7 @@ def walk(access: Access, given: Mapping[str, int]) -> Walk:
     sizes = {symbol: _size(symbol, given) for symbol in _parameters(access)}
     lost = _lost(access)
     if lost is not None:
-        basis = _worst(_trips(loop, sizes).basis for loop in access.loops)
+        basis = _worst(t.basis for t in _all_trips(access, sizes))
         return Walk("unresolved", None, None, basis, None, lost)
     found = _measured(access, sizes)
     if not found.executions and not all(map(_is_given, sizes)):
@@ -59,7 +59,7 @@ def walk(access: Access, given: Mapping[str, int]) -> Walk:
 
 
 def _measured(access: Access, sizes: Mapping[Symbol, int]) -> Walk:
-    trips = [_trips(loop, sizes) for loop in access.loops]
+    trips = _all_trips(access, sizes)
     return _by_formula(access, trips, sizes) or _by_walking(access, trips, sizes)
 
 
@@ -134,15 +134,33 @@ def _is_given(symbol: Symbol) -> bool:
     return symbol.low is not None and symbol.low == symbol.high
 
 
-def _trips(loop: LoopInstance, sizes: Mapping[Symbol, int]) -> Trips:
-    """The loop's trips as a number, for a nest whose trips do not change from one round to the next."""
+def _all_trips(access: Access, sizes: Mapping[Symbol, int]) -> list[Trips]:
+    computed = _computed(access)
+    return [_trips(loop, sizes, computed) for loop in access.loops]
+
+
+def _computed(access: Access) -> set[Symbol]:
+    """The carried variables whose values a walk computes: no data is in them."""
+    steps = {r.symbol: r.first.leaves() | r.next.leaves() for loop in access.loops for r in loop.recurrences}
+    found = set(steps)
+    while lost := {
+        symbol
+        for symbol in found
+        if any(s.kind in ("data", "unknown") or (s.kind == "carried" and s not in found) for s in steps[symbol])
+    }:
+        found -= lost
+    return found
+
+
+def _trips(loop: LoopInstance, sizes: Mapping[Symbol, int], computed: set[Symbol]) -> Trips:
+    """The loop's trips as a number; -1 where they change from one round of the loops around to the next."""
     form = loop.trips
     if form is None:
         if loop.tripcount is not None:
             return Trips(loop.tripcount, None, "tripcount", loop)
         return Trips(ASSUMED_TRIPS, None, "assumed", loop)
     leaves = form.leaves()
-    if any(symbol.kind in ("data", "unknown", "carried") for symbol in leaves):
+    if any(symbol.kind in ("data", "unknown", "carried") and symbol not in computed for symbol in leaves):
         high = bounds(form)[1]
         if loop.tripcount is not None:
             return Trips(loop.tripcount, form, "tripcount", loop)
@@ -152,7 +170,7 @@ def _trips(loop: LoopInstance, sizes: Mapping[Symbol, int]) -> Trips:
     unknown = [symbol for symbol in leaves if symbol.kind == "parameter" and not _is_given(symbol)]
     if unknown and loop.tripcount is not None:
         return Trips(loop.tripcount, form, "tripcount", loop)
-    if any(symbol.kind == "counter" for symbol in leaves):
+    if any(symbol.kind == "counter" or symbol in computed for symbol in leaves):
         return Trips(-1, form, "assumed" if unknown else "constant", loop)
     count = compiled(form)(dict(sizes))
     if unknown:
@@ -176,7 +194,7 @@ def _by_data(form: Form) -> bool:
 
 
 def _lost(access: Access) -> str | None:
-    """Why the address can't be told, when it hangs on something that could not be followed."""
+    """Why the address can't be told, when it depends on something that could not be followed."""
     numbers = {loop.number for loop in access.loops}
     for symbol in access.offset.leaves():
         if symbol.kind == "unknown" and symbol.reason and not _by_data(access.offset):
@@ -393,7 +411,7 @@ def _multiples(access: Access, trips: Sequence[Trips]) -> tuple[int, int]:
 
 
 def _ends_by_itself(loop: LoopInstance) -> bool:
-    """Whether the walk finds out how often the loop runs: its end hangs on no data."""
+    """Whether the walk finds out how often the loop runs: its end depends on no data."""
     ends = (*loop.until, *loop.exits)
     return loop.trips is None and bool(ends) and not any(_drawn_end(form) for form in ends)
 
