@@ -312,7 +312,7 @@ def disagreements(found: Walk, offsets: list[int], size: int) -> list[str]:
     step, share = main_step(offsets)
     wrong = []
     named = {size: "sequential", -size: "descending", 0: "repeated"}.get(step, "strided")
-    if share >= 0.75 and found.pattern != named:
+    if share >= 0.75 and len(offsets) > 20 and found.pattern != named:
         wrong.append(f"{found.pattern}, truly {named} ({share:.0%})")
     if found.pattern == named == "strided" and found.stride_bytes != step and share >= 0.75:
         wrong.append(f"stride {found.stride_bytes}, truly {step}")

@@ -312,7 +312,7 @@ def disagreements(found: Walk, offsets: list[int], size: int) -> list[str]:
     step, share = main_step(offsets)
     wrong = []
     named = {size: "sequential", -size: "descending", 0: "repeated"}.get(step, "strided")
-    if share >= 0.75 and found.pattern != named:
+    if share >= 0.75 and len(offsets) > 20 and found.pattern != named:
         wrong.append(f"{found.pattern}, truly {named} ({share:.0%})")
     if found.pattern == named == "strided" and found.stride_bytes != step and share >= 0.75:
         wrong.append(f"stride {found.stride_bytes}, truly {step}")
@@ -322,7 +322,7 @@ def disagreements(found: Walk, offsets: list[int], size: int) -> list[str]:
     return wrong
 
 
-@settings(SLOW, max_examples=800)
+@settings(SLOW, max_examples=1500)
 @given(nests())
 def test_a_nest_as_text_is_walked_as_it_runs(nest: Nest) -> None:
     text = nest.text("echo")
@@ -414,13 +414,13 @@ def formed_accesses(draw: st.DrawFn) -> Access:
     return read("in", element * 4, *loops, guards=tuple(guard for guard in guards if guard.known != 1))
 
 
-@settings(SLOW, max_examples=15000)
+@settings(SLOW, max_examples=8000)
 @given(formed_accesses())
 def test_a_nest_of_forms_is_walked_as_it_runs(access: Access) -> None:
     offsets = visits(access)
     found = walk(access, {})
     note(show_walk(found))
-    note(f"{offsets[:40]}"); from helpers.traced import show_access, show_loop_course; note(show_access(access)); note(str([show_loop_course(l) for l in access.loops]))
+    note(f"{offsets[:40]}")
     if access.guards and access.guards[0].condition.known == 0:
         assert not offsets
     assert disagreements(found, offsets, 4) == []

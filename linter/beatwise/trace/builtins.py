@@ -90,10 +90,13 @@ class Builtins(Evaluator):
             return self.value(call.arguments[0], state)
         return None
 
-    def gives_spot(self, expression: Call) -> bool:
+    def gives_place(self, expression: Call) -> bool:
+        if super().gives_place(expression):
+            return True
         if expression.receiver is None:
             return expression.name in ("move", "forward", "ref", "cref", "as_const", "reg")
-        return expression.name in ("at", "operator[]", "back", "front", "data", "get", "first", "second")
+        kind = bare(expression.receiver.type)
+        return isinstance(kind, ArrayType | VectorType) and expression.name in ("at", "operator[]", "back", "front", "get")
 
     # ---------------------------------------------------------------------------------------------- methods
 

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from beatwise.model.form import ONE, ZERO, Form, Symbol, div, negation, number, parameter, symbol_form
+from beatwise.model.form import ONE, ZERO, Form, Symbol, div, mask, negation, number, parameter, symbol_form
 from beatwise.model.kernel import (
     Assign,
     Binary,
@@ -113,11 +113,19 @@ class Evaluator(Machine):
             case Cast():
                 return self._cast(expression, state)
             case Call():
-                return self.call(expression, state)
+                result = self.call(expression, state)
+                if isinstance(result, Pointer) and self.gives_place(expression):
+                    return self.load(result.spot, expression.place, state)
+                return result
             case Build():
                 return self.build(expression, state)
             case Items():
                 return self._items(expression, state)
+            case Opaque(reason="a concatenation", parts=(high, low)) if isinstance(bare(low.type), IntType):
+                low_type = bare(low.type)
+                assert isinstance(low_type, IntType)
+                low_form = mask(self.number(low, state), low_type.bits)
+                return Number(self.number(high, state) * (1 << low_type.bits) + low_form)
             case Opaque(reason=reason, parts=parts, place=place):
                 made_of = [self.number(part, state) for part in parts]
                 return self.lost(reason, place, *made_of)
@@ -399,7 +407,7 @@ class Evaluator(Machine):
                 a, b = self.spot(yes, state), self.spot(no, state)
                 return choose_spot(decided, a, b, condition.place) if a is not None and b is not None else None
             case Call():
-                if isinstance(expression.type, ReferenceType) or self.gives_spot(expression):
+                if self.gives_place(expression):
                     value = self.call(expression, state)
                     return value.spot if isinstance(value, Pointer) else None
                 return None
@@ -409,9 +417,12 @@ class Evaluator(Machine):
             case _:
                 return None
 
-    def gives_spot(self, expression: Call) -> bool:
-        """Whether a call's result is a place although its type does not say so."""
-        return False
+    def gives_place(self, expression: Call) -> bool:
+        """Whether a call's result is a place and no value: a reference."""
+        function = self.program.functions.get(expression.function) if expression.function else None
+        return isinstance(expression.type, ReferenceType) or (
+            function is not None and isinstance(function.result, ReferenceType)
+        )
 
     def _name_spot(self, key: str, kind: Type, state: State) -> Spot:
         root = self.root(key)
@@ -517,7 +528,8 @@ class Evaluator(Machine):
         form = self._form_of(value)
         if isinstance(spot, LocalSpot):
             old = state.read(spot, target.place)
-            state.write(spot, Number(depending(form, self._form_of(old) if old is not None else ZERO)))
+            before = self._form_of(old) if old is not None else ZERO
+            state.write(spot, Number(_with_bits(before, form, high, low)))
             return spot
         if isinstance(spot, MemorySpot):
             spot = _bits_of(spot, high, low)
@@ -608,6 +620,16 @@ def _put(parts: dict[Path, Value], path: Path, value: Value) -> None:
             parts[(*path, *rest)] = part
     else:
         parts[path] = value
+
+
+def _with_bits(whole: Form, part: Form, high: Form | None, low: Form | None) -> Form:
+    """``whole`` with bits ``high`` to ``low`` set to ``part``; only what it depends on, where data is in it anyway."""
+    at = low.known if low is not None else None
+    width = (high - low).known if high is not None and low is not None else None
+    drawn = any(symbol.kind in ("data", "unknown") for symbol in whole.leaves() | part.leaves())
+    if at is None or width is None or width < 0 or at > 1024 or drawn:
+        return depending(whole, part)
+    return whole + (mask(part, width + 1) - bit_range(whole, high, low)) * (1 << at)
 
 
 def _bits_of(spot: MemorySpot, high: Form | None, low: Form | None) -> MemorySpot:

@@ -37,11 +37,20 @@ def fitted(form: Form, kind: Type) -> Form:
     most = (1 << kind.bits - 1) - 1 if kind.signed else (1 << kind.bits) - 1
     if kind.bits == 1 and not kind.signed:
         return truth(form) if low is None or high is None or low < 0 or high > 1 else form
+    if kind.bits >= 32 and not kind.signed and form.known is None and (high is None or high > most):
+        form = _with_small_factors(form, kind.bits)
+        low, high = bounds(form)
     too_high = high is not None and high > most
     too_low = low is not None and low < least and (kind.bits < 32 or (high is not None and high < least))
     if kind.bits >= 32 and too_high and not (low is not None and low > most) and form.known is None:
         return form if not _only_plain(form) else wrap(form, kind.bits, kind.signed)
     return wrap(form, kind.bits, kind.signed) if too_high or too_low else form
+
+
+def _with_small_factors(form: Form, bits: int) -> Form:
+    """The same modulo ``2**bits``: ``4294967295 * j + 1`` of 32 bits is ``1 - j``."""
+    half = 1 << bits - 1
+    return Form({monomial: (factor + half) % (1 << bits) - half for monomial, factor in form.terms.items()})
 
 
 def _only_plain(form: Form) -> bool:

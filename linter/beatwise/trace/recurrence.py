@@ -71,9 +71,8 @@ def solve(carries: Sequence[Carry], loop_counter: Symbol, inside: frozenset[int]
         pending = {carry.symbol for carry in left}
         renamed: dict[Symbol, Form] = {}
         for carry in left:
-            depends = frozenset(s for other in left for s in other.next.leaves() if s not in pending)
             own = frozenset(s for s in _reach(carry, left) if s not in pending)
-            renamed[carry.symbol] = symbol_form(replace(carry.symbol, depends=own or depends))
+            renamed[carry.symbol] = symbol_form(replace(carry.symbol, depends=own))
         memo = {}
         left = [
             Carry(next(iter(renamed[c.symbol].symbols())), c.first, substitute(c.next, renamed, memo)) for c in left

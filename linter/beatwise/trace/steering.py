@@ -7,7 +7,8 @@ from collections.abc import Sequence
 from dataclasses import replace
 
 from beatwise.model.access import Access, Choice, Guard
-from beatwise.model.form import Form, negation
+from beatwise.model.form import Form, both, either, negation, number
+from beatwise.trace.logic import always
 from beatwise.trace.values import compared
 
 
@@ -24,12 +25,32 @@ def steered(accesses: Sequence[Access]) -> tuple[Access, ...]:
     result = list(accesses)
     for members in groups.values():
         for family in _families(accesses, members):
-            names = tuple(dict.fromkeys(accesses[at].argument for at in family))
+            together = [accesses[at] for at in family]
+            names = tuple(name for name in dict.fromkeys(a.argument for a in together) if not _in_any_case(name, together))
             if len(names) < 2:
                 continue
             for at in family:
-                result[at] = _chosen(accesses[at], [accesses[other] for other in family], names)
+                if accesses[at].argument in names:
+                    others = [access for access in together if access.argument in names]
+                    result[at] = _chosen(accesses[at], others, names)
     return tuple(result)
+
+
+def _in_any_case(argument: str, family: Sequence[Access]) -> bool:
+    """Whether the argument is used whichever way the branches go: it is then no alternative."""
+    shared = 0
+    while all(len(access.guards) > shared for access in family) and (
+        len({access.guards[shared].condition for access in family}) == 1
+    ):
+        shared += 1
+    reached = number(0)
+    for access in family:
+        if access.argument == argument:
+            condition = number(1)
+            for guard in access.guards[shared:]:
+                condition = both(condition, guard.condition)
+            reached = either(reached, condition)
+    return always(reached)
 
 
 def _decides(guard: Guard, access: Access) -> bool:

@@ -95,6 +95,8 @@ def _trace(program: Program, top: Function, given: Mapping[str, int]) -> Trace:
         kind = variable.type
         if variable.name in arguments:
             held: Value = Pointer(memory_of(variable.name, kind))
+            if isinstance(kind, ArrayType):
+                machine.types[root] = ReferenceType(kind)
             state.cells[root] = {(): held}
         elif stream_in(kind) is not None:
             state.cells[root] = {}
@@ -151,7 +153,7 @@ def memory_of(name: str, kind: Type) -> MemorySpot:
     if isinstance(kind, PointerType | BurstPointerType):
         return MemorySpot(name, number(0), size_of(kind.to), kind.to)
     if isinstance(kind, ArrayType):
-        return MemorySpot(name, number(0), size_of(kind.element), kind.element)
+        return MemorySpot(name, number(0), kind.bytes or size_of(kind.element), kind)
     return MemorySpot(name, number(0), kind.bytes, kind)
 
 

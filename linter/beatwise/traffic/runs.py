@@ -8,7 +8,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass, replace
-from math import gcd
+from math import gcd, prod
 
 from beatwise.model.access import Access, LoopInstance
 from beatwise.model.form import Form, Symbol, both, bounds, number, redrawn_in, symbol_form
@@ -219,9 +219,11 @@ def _by_formula(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, i
     if any(any(not _by_data(form) for form in t.loop.exits) for t in trips):
         return None
     counters = {t.loop.counter for t in trips}
-    if any(counters & g.condition.leaves() and not _by_data(g.condition) for g in access.guards):
-        return None
     numbers = {t.loop.number for t in trips}
+    for guard in access.guards:
+        turns = (s for s in guard.condition.leaves() if s.kind in ("counter", "carried"))
+        if not _by_data(guard.condition) and any(s.loop in numbers for s in turns):
+            return None
     if any(
         symbol.kind in ("data", "unknown", "carried") and numbers.intersection(redrawn_in(symbol))
         for symbol in access.offset.leaves()
@@ -291,6 +293,10 @@ def _boxed(
     mean = float(run) if thinned is None else thinned
     if pattern in ("repeated", "descending", "strided"):
         mean = 1.0
+    if pattern in ("descending", "strided") and decided is None and all(t.basis in ("constant", "given") for t in trips):
+        if not any(map(_drawn, strides)):
+            jumps = [compiled(stride)(dict(sizes)) for stride in strides]
+            mean = _counted_run([t.count for t in trips], jumps, access.element_bytes)
     if decided is not None and (thinned is not None or pattern != "sequential"):
         basis = "data"
     if access.manual:
@@ -300,6 +306,24 @@ def _boxed(
     return Walk(
         pattern, step, mean, basis, float(executions), access.taken, start_multiple or START_MULTIPLE, run_multiple
     )
+
+
+def _counted_run(counts: Sequence[int], strides: Sequence[int], element: int) -> float:
+    """Elements a run in a box of loops, outermost first, by counting the steps of one element ahead.
+
+    The rounds of a loop may meet by chance: ``a[3 - i - j]`` goes from 3, 2, 1 on to 2, 1, 0.
+
+    >>> _counted_run([2, 3], [-4, -4], 4), _counted_run([2, 3], [400, 4], 4)
+    (1.2, 3.0)
+    """
+    inside, back, joins = 1, 0, 0
+    total = prod(counts)
+    for count, stride in zip(reversed(counts), reversed(strides), strict=True):
+        inside *= count
+        if stride - back == element and inside:
+            joins += total // inside * (count - 1)
+        back += stride * (count - 1)
+    return total / max(1, total - joins)
 
 
 def _pattern(stride: Form, value: int | None, element: int) -> tuple[Pattern, int | None]:
