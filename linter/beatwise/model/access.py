@@ -23,6 +23,14 @@ class Recurrence:
 
 
 @dataclass(frozen=True, slots=True)
+class Outcome:
+    """What stands for a variable after a loop: ``form`` is what it is when the loop ends, by the loop's own symbols."""
+
+    symbol: Symbol
+    form: Form
+
+
+@dataclass(frozen=True, slots=True)
 class LoopInstance:
     """A loop as it runs at one place of the call tree.
 
@@ -39,6 +47,7 @@ class LoopInstance:
     label: str | None = None
     tripcount: int | None = None  #: average trips that a directive states
     recurrences: tuple[Recurrence, ...] = ()
+    outcomes: tuple[Outcome, ...] = ()
     until: tuple[Form, ...] = ()  #: the loop ends before the iteration that finds one of these not 0
     exits: tuple[Form, ...] = ()  #: the loop ends early in the iteration in which one of these is not 0
     data_exit: Place | None = None  #: where data decides when it ends

@@ -17,6 +17,8 @@ from beatwise.model.place import Place
 Kind = Literal["counter", "parameter", "data", "carried", "unknown", "operation"]
 TERMS_AT_MOST = 48  #: a longer polynomial is kept as one opaque symbol
 
+COUNT = "how often something happened"  #: the reason of data that counts iterations: it leads on, it does not scatter
+
 _numbers = count(1)
 
 

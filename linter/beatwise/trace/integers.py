@@ -2,10 +2,13 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
+
 from beatwise.model.form import (
     ONE,
     ZERO,
     Form,
+    Symbol,
     both,
     bounds,
     div,
@@ -40,11 +43,23 @@ def fitted(form: Form, kind: Type) -> Form:
     if kind.bits >= 32 and not kind.signed and form.known is None and (high is None or high > most):
         form = _with_small_factors(form, kind.bits)
         low, high = bounds(form)
+    if kind.bits < 32 and None in (low, high) and any(symbol.kind == "carried" for symbol in _parts(form)):
+        return wrap(form, kind.bits, kind.signed)  # how far a loop carries it is known only when the loop is solved
     too_high = high is not None and high > most
     too_low = low is not None and low < least and (kind.bits < 32 or (high is not None and high < least))
     if kind.bits >= 32 and too_high and not (low is not None and low > most) and form.known is None:
         return form if not _only_plain(form) else wrap(form, kind.bits, kind.signed)
     return wrap(form, kind.bits, kind.signed) if too_high or too_low else form
+
+
+def _parts(form: Form) -> Iterator[Symbol]:
+    """The symbols that make up the form's value, without what these depend on."""
+    for symbol in form.symbols():
+        if symbol.kind == "operation":
+            for operand in symbol.operands:
+                yield from _parts(operand)
+        else:
+            yield symbol
 
 
 def _with_small_factors(form: Form, bits: int) -> Form:

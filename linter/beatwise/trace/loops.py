@@ -5,13 +5,14 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass, replace
 
-from beatwise.model.access import LoopInstance, Recurrence
+from beatwise.model.access import LoopInstance, Outcome, Recurrence
 from beatwise.model.form import (
     ONE,
     ZERO,
     Form,
     Symbol,
     bounds,
+    COUNT,
     carried,
     counter,
     data,
@@ -31,7 +32,7 @@ from beatwise.trace.calls import Caller
 from beatwise.trace.expressions import bare
 from beatwise.trace.interfaces import element_type
 from beatwise.trace.machine import Flow
-from beatwise.trace.recurrence import Carry, Solved, Trips, solve, trips_while
+from beatwise.trace.recurrence import Carry, Solved, Trips, only_counts, solve, trips_while
 from beatwise.trace.state import ANY, State, conjunction, joined, replaced, replaced_cells
 from beatwise.trace.values import (
     ChoiceSpot,
@@ -573,6 +574,7 @@ class Looper(Caller):
     ) -> Flow:
         """The state after the loop: every moved cell as it is when the counter has reached the trips."""
         broken = bool(flow.breaks or flow.returns)
+        outcomes: dict[Symbol, Outcome] = {}
         if trips.count is not None and not trips.unsolved:
             last = trips.count
         else:
@@ -584,6 +586,8 @@ class Looper(Caller):
                 if made is not None
                 else replace(unknown("trips that are not known", statement.place, self.open), low=0, high=top)
             )
+            symbol = replace(symbol, reason=COUNT)
+            outcomes[final] = Outcome(symbol, symbol_form(final))
             last = symbol_form(symbol)
         at_last = dict.fromkeys((final, count_from, provisional), last)
         memo_last: dict[Symbol, Form] = {}
@@ -604,7 +608,7 @@ class Looper(Caller):
             value_here: Value
             shown = substitute(closed, at_last, memo_last)
             if any(s.kind == "carried" and s.loop == loop_number for s in shown.leaves()):
-                shown = self._after(shown, statement, loop_number)
+                shown = self._after(shown, statement, loop_number, outcomes)
             if isinstance(m.before, Pointer):
                 value_here = Pointer(moved(m.before.spot, shown))
             else:
@@ -623,18 +627,25 @@ class Looper(Caller):
                 root: cells for root, cells in gone.cells.items() if root in state.cells or root[0].startswith("what")
             }
             returns.append((gone, replaced(replaced(value, values, memo), at_last, memo_last)))
+        self.record.loops[loop_number] = replace(
+            self.record.loops[loop_number], outcomes=tuple(outcomes.values())
+        )
         return Flow(result, returns=returns)
 
-    def _after(self, form: Form, statement: Loop, loop_number: int) -> Form:
+    def _after(self, form: Form, statement: Loop, loop_number: int, outcomes: dict[Symbol, Outcome]) -> Form:
         """What a carried variable has come to when the loop is over, where no formula says it."""
-        swap: dict[Symbol, Form] = {}
-        for symbol in form.leaves():
-            if symbol.kind == "carried" and symbol.loop == loop_number:
+        swap = {symbol: symbol_form(outcome.symbol) for symbol, outcome in outcomes.items()}
+        for symbol in sorted(form.leaves(), key=lambda symbol: symbol.number):
+            if symbol.kind == "carried" and symbol.loop == loop_number and symbol not in swap:
                 if any(other.kind == "data" for other in symbol.depends):
                     made = data(symbol.name, statement.place, self.open, depends=symbol.depends)
                 else:
                     made = unknown("", statement.place, self.open, symbol.depends)
-                swap[symbol] = symbol_form(replace(made, low=symbol.low, high=symbol.high))
+                steps = {r.symbol: r.next for r in self.record.loops[loop_number].recurrences}
+                counts = symbol in steps and only_counts(steps[symbol], symbol)
+                made = replace(made, low=symbol.low, high=symbol.high, reason=COUNT if counts else made.reason)
+                outcomes[symbol] = Outcome(made, symbol_form(symbol))
+                swap[symbol] = symbol_form(made)
         return substitute(form, swap)
 
 

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass, field, replace
 
-from beatwise.model.access import Access, Choice, Guard, LoopInstance, Recurrence, Stream, StreamOperation
+from beatwise.model.access import Access, Choice, Guard, LoopInstance, Outcome, Recurrence, Stream, StreamOperation
 from beatwise.model.form import Form, Symbol, substitute, symbol_form
 
 
@@ -64,6 +64,7 @@ class Recording:
                     Recurrence(r.symbol, substitute(r.first, values, memo), substitute(r.next, values, memo))
                     for r in loop.recurrences
                 ),
+                outcomes=tuple(Outcome(o.symbol, substitute(o.form, values, memo)) for o in loop.outcomes),
                 until=tuple(substitute(condition, values, memo) for condition in loop.until),
                 exits=tuple(substitute(condition, values, memo) for condition in loop.exits),
             )

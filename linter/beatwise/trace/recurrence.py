@@ -6,6 +6,7 @@ from collections.abc import Sequence
 from dataclasses import dataclass, replace
 
 from beatwise.model.form import (
+    COUNT,
     ONE,
     ZERO,
     Form,
@@ -94,6 +95,17 @@ def _reach(carry: Carry, carries: Sequence[Carry]) -> frozenset[Symbol]:
                 seen.add(symbol)
                 waiting.append(by_symbol[symbol])
     return frozenset(found)
+
+
+def only_counts(step: Form, symbol: Symbol) -> bool:
+    """Whether what ``symbol`` becomes is itself plus a number, or plus a count, on every branch."""
+    choice = _operands(step, "select")
+    if choice is not None:
+        return all(only_counts(arm, symbol) for arm in choice[1:])
+    if any(s.reason == COUNT and s.name == symbol.name for s in step.symbols()) and len(step.terms) <= 2:
+        return all(s.reason == COUNT for s in step.symbols())
+    moved = step - symbol_form(symbol)
+    return all(s.reason == COUNT or s.kind in ("counter", "parameter") for s in moved.leaves() if s.reason != COUNT)
 
 
 def varies(form: Form, pending: set[Symbol], inside: frozenset[int]) -> bool:

@@ -8,7 +8,7 @@ for all.
 from __future__ import annotations
 
 from collections import Counter
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field
 
 from beatwise.model.access import Access, LoopInstance
@@ -82,10 +82,18 @@ class Seen:
 
 
 class Walker:
-    """One walk. ``trips_of`` gives the trips of loops whose count no form tells."""
+    """One walk. ``trips_of`` gives the trips of loops whose count no form tells. ``let_in``: data lets the access run
+    whenever it decides (else every test on data is a toss of a coin).
+    """
 
     def __init__(
-        self, access: Access, sizes: Mapping[Symbol, int], trips_of: Mapping[int, int], rows: Mapping[Symbol, int]
+        self,
+        access: Access,
+        sizes: Mapping[Symbol, int],
+        trips_of: Mapping[int, int],
+        rows: Mapping[Symbol, int],
+        *,
+        let_in: bool = False,
     ) -> None:
         self.access, self.trips_of, self.rows = access, trips_of, rows
         self.values: Values = _Drawn(self)
@@ -98,11 +106,17 @@ class Walker:
         self.coins = dict(coin for g in self.drawn for symbol in _comparisons(g) for coin in _sides(symbol))
         self.coin_loops = {coin: _tossed_in(coin) for coin in self.coins}
         self.by_loop = _drawn_in(access)
+        self.decided: dict[Symbol, int] = {}
+        if let_in:
+            for guard in self.drawn:
+                _decide(guard, True, self.decided)
+        self.gates = _gates(access, self.guards)
         self.oldest = min((loop.counter.number for loop in access.loops), default=0)
 
     def walk(self) -> Seen:
         try:
-            self._level(0)
+            if self._open(-1):
+                self._level(0)
         except Enough:
             self.seen.whole = False
         return self.seen
@@ -110,7 +124,7 @@ class Walker:
     def _level(self, level: int) -> None:
         loops = self.access.loops
         if level == len(loops):
-            self._execute(False)
+            self.seen.take(compiled(self.access.offset)(self.values), False)
             return
         loop = loops[level]
         values = self.values
@@ -124,7 +138,9 @@ class Walker:
         innermost = level == len(loops) - 1
         if innermost and self._regular(loop) and trips > 2:
             self._stretch(loop, trips)
+            self._end(loop, trips)
             return
+        ended = trips
         until = [compiled(form) for form in loop.until if not _by_data(form)]
         exits = [compiled(form) for form in loop.exits if not _by_data(form)]
         for k in range(trips):
@@ -132,24 +148,46 @@ class Walker:
             if k:
                 self._redraw(loop)
             if any(test(values) for test in until):
+                ended = k
                 break
             self.steps += 1
             if self.steps > STEPS_AT_MOST:
                 raise Enough
-            if innermost:
-                self._execute(k > 0)
-            else:
-                self._level(level + 1)
+            if self._open(level):
+                if innermost:
+                    self.seen.take(compiled(self.access.offset)(values), k > 0)
+                else:
+                    self._level(level + 1)
             if any(test(values) for test in exits):
+                ended = k
                 break
             for symbol, value in [(symbol, following(values)) for symbol, following in nexts]:
                 values[symbol] = value
+        self._end(loop, ended)
+
+    def _end(self, loop: LoopInstance, ended: int) -> None:
+        """What stands for the loop's variables after it gets its value."""
+        self.values[loop.counter] = ended
+        for outcome in loop.outcomes:
+            self.values[outcome.symbol] = compiled(outcome.form)(self.values)
+
+    def _open(self, level: int) -> bool:
+        """Whether the conditions that are settled in the loop at ``level`` (-1: before all loops) let the access run."""
+        values = self.values
+        for guard, coins in self.gates.get(level, ()):
+            for coin in coins:
+                if coin not in values:
+                    first, turned = self.coins[coin]
+                    values[coin] = self.decided.get(coin, self.flip(first) ^ turned)
+            if not compiled(guard)(values):
+                return False
+        return True
 
     def _trips(self, loop: LoopInstance) -> int:
         if loop.number in self.trips_of:
             return self.trips_of[loop.number]
         if loop.trips is None:
-            return STEPS_AT_MOST
+            return STEPS_AT_MOST + 1
         return compiled(loop.trips)(self.values)
 
     def _regular(self, loop: LoopInstance) -> bool:
@@ -165,24 +203,10 @@ class Walker:
         self.steps += 1
         if self.steps > STEPS_AT_MOST:
             raise Enough
-        if not all(compiled(g)(self.values) for g in self.free):
-            return
         start = compiled(self.access.offset)(self.values)
         self.values[loop.counter] = 1
         stride = compiled(self.access.offset)(self.values) - start
         self.seen.take_many(start, stride, trips, False)
-
-    def _execute(self, inner: bool) -> None:
-        values = self.values
-        for guard in self.free:
-            if not compiled(guard)(values):
-                return
-        for coin, (first, turned) in self.coins.items():
-            if coin not in values:
-                values[coin] = self.flip(first) ^ turned
-        if not all(compiled(guard)(values) for guard in self.drawn):
-            return
-        self.seen.take(compiled(self.access.offset)(values), inner)
 
     def _redraw(self, loop: LoopInstance) -> None:
         """A new iteration: what was drawn in the one before is drawn anew."""
@@ -253,6 +277,37 @@ def _sides(test: Symbol) -> list[tuple[Symbol, tuple[Symbol, int]]]:
     opposite = negation(Form({(test,): 1})).symbols() | {test}
     first = min(opposite, key=lambda symbol: symbol.number)
     return [(symbol, (first, int(symbol is not first))) for symbol in opposite]
+
+
+def _gates(access: Access, guards: Sequence[Form]) -> dict[int, list[tuple[Form, list[Symbol]]]]:
+    """The conditions, with the tests on data in them, by the position of the innermost loop that can change them."""
+    position = {loop.number: at for at, loop in enumerate(access.loops)}
+    found: dict[int, list[tuple[Form, list[Symbol]]]] = {}
+    for guard in guards:
+        turned = {loop for symbol in guard.leaves() for loop in redrawn_in(symbol)}
+        level = max((position[loop] for loop in turned if loop in position), default=-1)
+        tests = sorted(_comparisons(guard), key=lambda symbol: symbol.number) if _by_data(guard) else []
+        found.setdefault(level, []).append((guard, tests))
+    return found
+
+
+def _decide(condition: Form, wanted: bool, decided: dict[Symbol, int]) -> None:
+    """The outcomes of the tests on data that make the condition come out as wanted, where there is no choice."""
+    if len(condition.terms) != 1:
+        return
+    (symbol,) = condition.symbols() or (None,)
+    if symbol is None:
+        return
+    if symbol.kind == "operation" and symbol.name == "not":
+        _decide(symbol.operands[0], not wanted, decided)
+    elif symbol.kind == "operation" and symbol.name == ("and?" if wanted else "or?"):
+        for operand in symbol.operands:
+            _decide(operand, wanted, decided)
+    elif symbol in _comparisons(condition):
+        for side, (first, turned) in _sides(symbol):
+            outcome = int(wanted) if side == symbol else int(not wanted)
+            decided.setdefault(side, outcome)
+            decided.setdefault(first, outcome ^ turned)
 
 
 def _tossed_in(coin: Symbol) -> set[int]:

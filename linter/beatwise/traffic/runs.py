@@ -11,10 +11,10 @@ from dataclasses import dataclass, replace
 from math import gcd, prod
 
 from beatwise.model.access import Access, LoopInstance
-from beatwise.model.form import Form, Symbol, both, bounds, number, redrawn_in, symbol_form
+from beatwise.model.form import COUNT, Form, Symbol, both, bounds, number, redrawn_in, symbol_form
 from beatwise.model.traffic import Basis, Pattern, Walk
 from beatwise.traffic.compiled import compiled
-from beatwise.traffic.replay import Walker
+from beatwise.traffic.replay import STEPS_AT_MOST, Walker
 
 ASSUMED_TRIPS = 1024  #: of a loop about which nothing is known
 EVEN_CHANCE = 0.5  #: how often data lets a guarded access run, when nothing more is known
@@ -396,7 +396,9 @@ def _by_walking(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, i
         and not (t.form is not None and rows.keys() & t.form.leaves())
         and not _ends_by_itself(t.loop)
     }  # fmt: skip
-    seen = Walker(access, sizes, fixed, rows).walk()
+    walker = Walker(access, sizes, fixed, rows)
+    seen = walker.walk()
+    let_in = Walker(access, sizes, fixed, rows, let_in=True).walk() if walker.drawn and not _own_counter(access) else seen
     basis = _worst([t.basis for t in trips])
     if any(_ends_by_itself(t.loop) for t in trips):
         basis = _worst([t.basis for t in trips if not _ends_by_itself(t.loop)])
@@ -406,16 +408,18 @@ def _by_walking(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, i
     if _guarded(access, trips):
         basis = "data"
     mean = seen.mean_run
+    if not seen.executions and not (seen.whole or let_in.executions):
+        return Walk("unresolved", None, None, basis, None, f"it does not run in the first {STEPS_AT_MOST} iterations")
     if not seen.executions:
         return Walk("single", None, None, basis, 0.0)
     executions = float(seen.executions) if seen.whole and not _guarded(access, trips) else _product(trips)
     if seen.executions == 1 and seen.whole:
         return Walk("single", None, 1.0, basis, 1.0)
-    pattern, step = _seen_pattern(seen.inner_steps or seen.steps, access.element_bytes)
+    pattern, step = _seen_pattern(let_in.inner_steps or let_in.steps, access.element_bytes)
     mean = 1.0 if pattern == "repeated" else mean
     if seen.inner_steps and mean is not None and mean >= 1.5 and pattern not in ("sequential",):
-        pattern, step = _seen_pattern(seen.steps, access.element_bytes)
-    if indirect:
+        pattern, step = _seen_pattern(let_in.steps, access.element_bytes)
+    if indirect and not (pattern == "sequential" and _is_mixed(access, trips)):
         basis = "data" if mean is None or mean < 2 else basis
         return Walk("indirect", None, mean, basis, executions, access.taken, *_multiples(access, trips))
     start, length = _multiples(access, trips) if pattern == "sequential" else (access.element_bytes,) * 2
@@ -499,9 +503,21 @@ def _indirect(access: Access, trips: Sequence[Trips]) -> bool:
             continue
         if any(t.loop.number in redrawn_in(s) for s in drawn):
             return True
-        if t.loop.counter in access.offset.leaves() or any(s.loop == t.loop.number for s in access.offset.leaves()):
+        if _moves_apart(access.offset, t.loop.number, drawn):
             return False
     return False
+
+
+def _moves_apart(offset: Form, loop: int, drawn: set[Symbol]) -> bool:
+    """Whether the loop moves the offset in terms of its own, not under one operation with the data."""
+    parts = [Form({monomial: 1}).leaves() for monomial in offset.terms]
+    moved = [leaves for leaves in parts if any(s.loop == loop for s in leaves)]
+    return bool(moved) and all(drawn.isdisjoint(leaves) for leaves in moved)
+
+
+def _is_mixed(access: Access, trips: Sequence[Trips]) -> bool:
+    """Whether data and the innermost counter stand under one operation (a ring buffer that starts where data says)."""
+    return bool(trips) and any(s.loop == trips[-1].loop.number for s in access.offset.leaves())
 
 
 def _values_in(form: Form, access: Access, seen: set[Symbol]) -> set[Symbol]:
@@ -510,9 +526,14 @@ def _values_in(form: Form, access: Access, seen: set[Symbol]) -> set[Symbol]:
     ``out[n++]`` under a condition on data walks in order, although data says how far.
     """
     carried = {r.symbol: r for loop in access.loops for r in loop.recurrences}
+    outcomes = {o.symbol: o.form for loop in access.loops for o in loop.outcomes}
     found: set[Symbol] = set()
     for symbol in form.symbols():
         if symbol in seen:
+            continue
+        if symbol in outcomes:
+            seen.add(symbol)
+            found |= _values_in(outcomes[symbol], access, seen)
             continue
         if symbol.kind == "operation":
             operands = symbol.operands[1:] if symbol.name == "select" else symbol.operands
@@ -521,9 +542,10 @@ def _values_in(form: Form, access: Access, seen: set[Symbol]) -> set[Symbol]:
         elif symbol in carried:
             seen.add(symbol)
             step = carried[symbol].next
-            found |= _values_in(step, access, seen) | _values_in(carried[symbol].first, access, seen)
+            inside = _values_in(step, access, seen) | _values_in(carried[symbol].first, access, seen)
+            found |= {leaf for leaf in inside if leaf.reason != COUNT}
             if not _only_steps(step, symbol):
-                found |= step.leaves() - carried.keys()
+                found |= {leaf for leaf in step.leaves() - carried.keys() - outcomes.keys() if leaf.reason != COUNT}
         else:
             found.add(symbol)
     return found
