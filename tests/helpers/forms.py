@@ -83,5 +83,5 @@ def quotient(value: int, by: int) -> int:
 
 def wrapped(value: int, bits: int, signed: bool) -> int:
     """What an integer of ``bits`` holds after the value is stored in it."""
-    kept = value % 2**bits
-    return kept - 2**bits if signed and kept >= 2 ** (bits - 1) else kept
+    kept = value % (1 << bits)
+    return kept - (1 << bits) if signed and kept >= 1 << bits - 1 else kept

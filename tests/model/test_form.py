@@ -15,8 +15,14 @@ from beatwise.model.form import (
     ZERO,
     Form,
     Symbol,
-    both,
     bounds,
+    number,
+    operation,
+    redrawn_in,
+    symbol_form,
+)
+from beatwise.model.operations import (
+    both,
     div,
     either,
     equal,
@@ -28,15 +34,11 @@ from beatwise.model.form import (
     minimum,
     mod,
     negation,
-    number,
-    operation,
-    redrawn_in,
     select,
-    substitute,
-    symbol_form,
     truth,
     wrap,
 )
+from beatwise.model.substitution import substitute
 from beatwise.traffic.compiled import compiled
 from helpers.forms import applied, evaluate, quotient, wrapped
 from helpers.traced import show

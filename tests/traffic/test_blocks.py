@@ -9,7 +9,8 @@ import pytest
 
 from beatwise.model import form as forms
 from beatwise.model.access import Access, Guard, Recurrence
-from beatwise.model.form import equal, less, negation, number, select, symbol_form
+from beatwise.model.form import number, symbol_form
+from beatwise.model.operations import equal, less, negation, select
 from beatwise.traffic import measure
 from traffic.nests import HBM, at, choice, drawn, loop, place, read, trace, traffic, write
 
@@ -322,7 +323,7 @@ def test_an_update_by_turns_of_data_is_not_free() -> None:
 def test_a_swap_by_turns_is_free() -> None:
     """for t: from = t % 2 ? b : a, to = the other; for i: to[i] = from[i];"""
     t, i = loop("t", 8), loop("i", 64)
-    odd = at(t) - forms.floordiv(at(t), number(2)) * 2
+    odd = at(t) - floordiv(at(t), number(2)) * 2
     turn = equal(odd, number(1))
     even = negation(turn)
     accesses = (

@@ -12,7 +12,8 @@ from hypothesis import strategies as st
 
 from beatwise.model.access import Access, LoopInstance
 from beatwise.model.board import Board
-from beatwise.model.form import negation, number
+from beatwise.model.form import number
+from beatwise.model.operations import negation
 from beatwise.model.traffic import PortTraffic, Traffic
 from beatwise.traffic import measure
 from traffic.nests import DDR, HBM, at, drawn, loop, read, trace, traffic, write

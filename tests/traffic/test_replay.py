@@ -11,7 +11,8 @@ from hypothesis import strategies as st
 
 from beatwise.model import form as forms
 from beatwise.model.access import Access, Recurrence
-from beatwise.model.form import equal, less, negation, number, select, symbol_form
+from beatwise.model.form import number, symbol_form
+from beatwise.model.operations import equal, less, negation, select
 from beatwise.traffic.replay import STEPS_AT_MOST, Seen, Walker
 from traffic.nests import at, drawn, loop, read
 
@@ -69,7 +70,8 @@ def test_a_long_walk_is_cut_and_the_unfinished_run_left_out() -> None:
 
 def test_an_endless_loop_is_cut() -> None:
     seen = seen_by(read("in", at(endless := loop("endless", None)) * 4, endless))
-    assert (seen.whole, seen.executions) == (False, STEPS_AT_MOST)
+    assert not seen.whole
+    assert seen.executions >= STEPS_AT_MOST
 
 
 def test_a_carried_variable_takes_its_steps() -> None:

@@ -13,8 +13,9 @@ from hypothesis import strategies as st
 
 from beatwise.model import form as forms
 from beatwise.model.access import Access, LoopInstance, Recurrence
-from beatwise.model.form import Form, Symbol, equal, floordiv, less, mask, maximum, minimum, negation, number, select
+from beatwise.model.form import Form, Symbol, number
 from beatwise.model.form import symbol_form as form_of
+from beatwise.model.operations import equal, floordiv, less, mask, maximum, minimum, negation, select
 from beatwise.model.traffic import Walk
 from beatwise.traffic.runs import ASSUMED_TRIPS, walk
 from generated.nests import ELEMENT_BYTES, Nest

@@ -3,24 +3,9 @@
 from __future__ import annotations
 
 from beatwise.model.access import Choice, LoopInstance
-from beatwise.model.form import (
-    ONE,
-    ZERO,
-    Form,
-    counter,
-    data,
-    div,
-    floordiv,
-    less,
-    maximum,
-    minimum,
-    negation,
-    number,
-    renumbered,
-    select,
-    symbol_form,
-)
+from beatwise.model.form import ONE, ZERO, Form, counter, data, number, renumbered, symbol_form
 from beatwise.model.kernel import Call, Expression
+from beatwise.model.operations import div, floordiv, less, maximum, minimum, negation, select
 from beatwise.model.place import Place
 from beatwise.model.types import (
     ArrayType,
@@ -96,7 +81,13 @@ class Builtins(Evaluator):
         if expression.receiver is None:
             return expression.name in ("move", "forward", "ref", "cref", "as_const", "reg")
         kind = bare(expression.receiver.type)
-        return isinstance(kind, ArrayType | VectorType) and expression.name in ("at", "operator[]", "back", "front", "get")
+        return isinstance(kind, ArrayType | VectorType) and expression.name in (
+            "at",
+            "operator[]",
+            "back",
+            "front",
+            "get",
+        )
 
     # ---------------------------------------------------------------------------------------------- methods
 

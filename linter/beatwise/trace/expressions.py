@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from beatwise.model.form import ONE, ZERO, Form, Symbol, div, mask, negation, number, parameter, symbol_form
+from beatwise.model.form import ONE, ZERO, Form, Symbol, number, parameter, symbol_form
 from beatwise.model.kernel import (
     Assign,
     Binary,
@@ -24,6 +24,7 @@ from beatwise.model.kernel import (
     Unary,
     Variable,
 )
+from beatwise.model.operations import div, mask, negation
 from beatwise.model.place import Place
 from beatwise.model.types import (
     ArrayType,

@@ -4,26 +4,8 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from beatwise.model.form import (
-    ONE,
-    ZERO,
-    Form,
-    Symbol,
-    both,
-    bounds,
-    div,
-    either,
-    equal,
-    floordiv,
-    less,
-    mask,
-    mod,
-    negation,
-    number,
-    operation,
-    truth,
-    wrap,
-)
+from beatwise.model.form import ONE, ZERO, Form, Symbol, bounds, number, operation
+from beatwise.model.operations import both, div, either, equal, floordiv, less, mask, mod, negation, truth, wrap
 from beatwise.model.types import IntType, Type
 from beatwise.trace.values import depending
 

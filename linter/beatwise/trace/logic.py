@@ -15,7 +15,8 @@ Test = tuple[Form, int | None]  #: (x, 3) is x == 3; (x, None) is x < 0
 def always(condition: Form) -> bool:
     """Whether the condition is 1 for every outcome of its tests; those of one value against constants exclude each other.
 
-    >>> from beatwise.model.form import either, equal, parameter, symbol_form, negation
+    >>> from beatwise.model.form import parameter, symbol_form
+    >>> from beatwise.model.operations import either, equal, negation
     >>> x = symbol_form(parameter("x", 0, None))
     >>> always(either(equal(x, number(1)), negation(equal(x, number(1)))))
     True

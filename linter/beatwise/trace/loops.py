@@ -7,26 +7,23 @@ from dataclasses import dataclass, replace
 
 from beatwise.model.access import LoopInstance, Outcome, Recurrence
 from beatwise.model.form import (
+    COUNT,
     ONE,
     ZERO,
     Form,
     Symbol,
     bounds,
-    COUNT,
     carried,
     counter,
     data,
-    floordiv,
-    minimum,
-    mod,
-    negation,
     number,
     renumbered,
-    substitute,
     symbol_form,
     unknown,
 )
 from beatwise.model.kernel import Directive, Expression, Loop
+from beatwise.model.operations import floordiv, minimum, mod, negation
+from beatwise.model.substitution import substitute
 from beatwise.model.types import ArrayType, IntType, PointerType, RealType, Type
 from beatwise.trace.calls import Caller
 from beatwise.trace.expressions import bare
@@ -281,7 +278,11 @@ class Looper(Caller):
             exits = [ONE]
         trips = self._trips(condition, exits, count_from, statement, trips_early)
         silent = self.record.mark() == mark
-        if silent and self._is_computed(moving, solved, changed_in_body, hints) and self._is_short(trips, self.steps - steps):
+        if (
+            silent
+            and self._is_computed(moving, solved, changed_in_body, hints)
+            and self._is_short(trips, self.steps - steps)
+        ):
             self.open = outer_open
             del self.record.loops[loop_number]
             assert trips.count is not None and trips.count.known is not None
@@ -627,9 +628,7 @@ class Looper(Caller):
                 root: cells for root, cells in gone.cells.items() if root in state.cells or root[0].startswith("what")
             }
             returns.append((gone, replaced(replaced(value, values, memo), at_last, memo_last)))
-        self.record.loops[loop_number] = replace(
-            self.record.loops[loop_number], outcomes=tuple(outcomes.values())
-        )
+        self.record.loops[loop_number] = replace(self.record.loops[loop_number], outcomes=tuple(outcomes.values()))
         return Flow(result, returns=returns)
 
     def _after(self, form: Form, statement: Loop, loop_number: int, outcomes: dict[Symbol, Outcome]) -> Form:

@@ -12,19 +12,7 @@ from dataclasses import dataclass, field, replace
 from itertools import count
 
 from beatwise.model.access import Access, Choice, Guard, StreamOperation
-from beatwise.model.form import (
-    ONE,
-    ZERO,
-    Form,
-    Symbol,
-    data,
-    either,
-    equal,
-    negation,
-    symbol_form,
-    truth,
-    unknown,
-)
+from beatwise.model.form import ONE, ZERO, Form, Symbol, data, symbol_form, unknown
 from beatwise.model.kernel import (
     Block,
     Declare,
@@ -41,6 +29,7 @@ from beatwise.model.kernel import (
     Switch,
     Variable,
 )
+from beatwise.model.operations import either, equal, negation, truth
 from beatwise.model.place import Place
 from beatwise.model.types import (
     ArrayType,
@@ -141,6 +130,7 @@ class Machine:
         self._activations = count(1)
         self._loops = count(1)
         self.calls: list[str] = []
+        self.jumps: dict[tuple[Place, ...], int] = {}  #: by the calls that lead there: the line of a goto
 
     # ------------------------------------------------------------------------------------------- bookkeeping
 
@@ -379,6 +369,7 @@ class Machine:
                 return Flow(None, continues=[state])
             case Leave(place=place):
                 self.notes.append((place, "a goto is not followed"))
+                self.jumps[self.frame.chain] = place.line
                 return Flow(state)
             case Return(value=None):
                 return Flow(None, returns=[(state, NOTHING)])

@@ -6,7 +6,8 @@ from collections.abc import Mapping
 from dataclasses import dataclass, field, replace
 
 from beatwise.model.access import Access, Choice, Guard, LoopInstance, Outcome, Recurrence, Stream, StreamOperation
-from beatwise.model.form import Form, Symbol, substitute, symbol_form
+from beatwise.model.form import Form, Symbol, symbol_form
+from beatwise.model.substitution import substitute
 
 
 @dataclass

@@ -5,25 +5,9 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
 
-from beatwise.model.form import (
-    COUNT,
-    ONE,
-    ZERO,
-    Form,
-    Symbol,
-    both,
-    bounds,
-    equal,
-    floordiv,
-    mask,
-    maximum,
-    minimum,
-    negation,
-    number,
-    select,
-    substitute,
-    symbol_form,
-)
+from beatwise.model.form import COUNT, ONE, ZERO, Form, Symbol, bounds, number, symbol_form
+from beatwise.model.operations import both, equal, floordiv, mask, maximum, minimum, negation, select
+from beatwise.model.substitution import substitute
 
 
 @dataclass(frozen=True, slots=True)
@@ -268,7 +252,8 @@ class Trips:
 def trips_while(condition: Form, loop_counter: Symbol) -> Trips:
     """The first value of the counter at which ``condition`` is 0.
 
-    >>> from beatwise.model.form import counter, less
+    >>> from beatwise.model.form import counter
+    >>> from beatwise.model.operations import less
     >>> k = counter("k", 1)
     >>> trips_while(less(symbol_form(k) * 4, number(10)), k).count
     3

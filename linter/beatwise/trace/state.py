@@ -5,8 +5,10 @@ from __future__ import annotations
 from collections.abc import Iterator, Mapping
 
 from beatwise.model.access import Guard
-from beatwise.model.form import ONE, Form, Symbol, both, either, lookup, negation, number, select, substitute
+from beatwise.model.form import ONE, Form, Symbol, number
+from beatwise.model.operations import both, either, lookup, negation, select
 from beatwise.model.place import Place
+from beatwise.model.substitution import substitute
 from beatwise.trace.logic import always
 from beatwise.trace.values import (
     ChoiceSpot,

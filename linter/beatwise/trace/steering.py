@@ -7,7 +7,8 @@ from collections.abc import Sequence
 from dataclasses import replace
 
 from beatwise.model.access import Access, Choice, Guard
-from beatwise.model.form import Form, both, either, negation, number
+from beatwise.model.form import Form, number
+from beatwise.model.operations import both, either, negation
 from beatwise.trace.logic import always
 from beatwise.trace.values import compared
 
@@ -26,7 +27,9 @@ def steered(accesses: Sequence[Access]) -> tuple[Access, ...]:
     for members in groups.values():
         for family in _families(accesses, members):
             together = [accesses[at] for at in family]
-            names = tuple(name for name in dict.fromkeys(a.argument for a in together) if not _in_any_case(name, together))
+            names = tuple(
+                name for name in dict.fromkeys(a.argument for a in together) if not _in_any_case(name, together)
+            )
             if len(names) < 2:
                 continue
             for at in family:

@@ -4,10 +4,12 @@ from __future__ import annotations
 
 import sys
 from collections.abc import Mapping
+from dataclasses import replace
 
-from beatwise.model.access import Stream, Trace
+from beatwise.model.access import Access, Stream, Trace
 from beatwise.model.form import Symbol, number, parameter, symbol_form
 from beatwise.model.kernel import Function, Problem, Program, Variable
+from beatwise.model.place import Place
 from beatwise.model.types import (
     ArrayType,
     BurstPointerType,
@@ -127,7 +129,7 @@ def _trace(program: Program, top: Function, given: Mapping[str, int]) -> Trace:
         problems.append(Problem(top.place.file, top.place.line, f"{top.name}: nested too deeply to be followed"))
     machine.record.forget_places_of_written()
     accesses, operations = machine.record.finished()
-    accesses = steered(accesses)
+    accesses = steered(tuple(_jumped(access, machine.jumps) for access in accesses))
     parameters.update(machine.given_used)
     problems += [Problem(place.file, place.line, what) for place, what in dict.fromkeys(machine.notes)]
     return Trace(
@@ -144,6 +146,15 @@ def _trace(program: Program, top: Function, given: Mapping[str, int]) -> Trace:
         problems=(*program.problems, *problems),
         dataflow=any(d.kind == "dataflow" for d in top.directives),
     )
+
+
+def _jumped(access: Access, jumps: Mapping[tuple[Place, ...], int]) -> Access:
+    """The access, unresolved where a goto in one of the functions around it makes its order unknown."""
+    for depth in range(len(access.chain) + 1):
+        line = jumps.get(access.chain[:depth])
+        if line is not None:
+            return replace(access, unresolved=f"the goto on line {line} is not followed")
+    return access
 
 
 def memory_of(name: str, kind: Type) -> MemorySpot:

@@ -9,7 +9,8 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass, replace
 
-from beatwise.model.form import ZERO, Form, both, equal, negation, number, opaque, select, symbol_form
+from beatwise.model.form import ZERO, Form, number, opaque, symbol_form
+from beatwise.model.operations import both, equal, negation, select
 from beatwise.model.place import Place
 from beatwise.model.types import ArrayType, Type, UnknownType, VoidType
 

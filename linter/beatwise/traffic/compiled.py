@@ -4,7 +4,8 @@ from __future__ import annotations
 
 from collections.abc import Callable
 
-from beatwise.model.form import PLAIN, Form, Symbol
+from beatwise.model.form import Form, Symbol
+from beatwise.model.substitution import PLAIN
 
 Values = dict[Symbol, int]
 Compiled = Callable[[Values], int]

@@ -10,9 +10,11 @@ from __future__ import annotations
 from collections import Counter
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field
+from math import gcd
 
 from beatwise.model.access import Access, LoopInstance
-from beatwise.model.form import Form, Symbol, negation, redrawn_in
+from beatwise.model.form import Form, Symbol, redrawn_in
+from beatwise.model.operations import negation
 from beatwise.traffic.compiled import Values, compiled
 
 STEPS_AT_MOST = 12_000  #: iterations of innermost loops that are walked through for one access
@@ -35,6 +37,8 @@ class Seen:
     runs: int = 0
     whole: bool = True  #: the walk came to its end
     last_run: int = 0
+    starts: int = 0  #: bytes that every run starts at a multiple of
+    lengths: int = 0  #: bytes that every run is a multiple of
     _next: int | None = None
     _last: int | None = None
 
@@ -49,6 +53,8 @@ class Seen:
         if offset == self._next and not (self.cut and not inner):
             self.last_run += 1
         else:
+            self.close()
+            self.starts = gcd(self.starts, offset)
             self.runs += 1
             self.last_run = 1
         self._last, self._next = offset, offset + self.element_bytes
@@ -66,10 +72,16 @@ class Seen:
         if stride == self.element_bytes:
             self.last_run += many - 1
         else:
+            self.close()
+            self.starts = gcd(self.starts, stride)
             self.runs += many - 1
             self.last_run = 1
         self._last = offset + stride * (many - 1)
         self._next = self._last + self.element_bytes
+
+    def close(self) -> None:
+        """A run has ended."""
+        self.lengths = gcd(self.lengths, self.last_run * self.element_bytes)
 
     @property
     def mean_run(self) -> float | None:
@@ -119,6 +131,7 @@ class Walker:
                 self._level(0)
         except Enough:
             self.seen.whole = False
+        self.seen.close()
         return self.seen
 
     def _level(self, level: int) -> None:
@@ -138,6 +151,8 @@ class Walker:
         innermost = level == len(loops) - 1
         if innermost and self._regular(loop) and trips > 2:
             self._stretch(loop, trips)
+            if trips > STEPS_AT_MOST and loop.trips is None:
+                raise Enough
             self._end(loop, trips)
             return
         ended = trips
@@ -280,13 +295,15 @@ def _sides(test: Symbol) -> list[tuple[Symbol, tuple[Symbol, int]]]:
 
 
 def _gates(access: Access, guards: Sequence[Form]) -> dict[int, list[tuple[Form, list[Symbol]]]]:
-    """The conditions, with the tests on data in them, by the position of the innermost loop that can change them."""
+    """The conditions, with the tests on data in them (and their opposites), by the position of the innermost loop that
+    can change them."""
     position = {loop.number: at for at, loop in enumerate(access.loops)}
     found: dict[int, list[tuple[Form, list[Symbol]]]] = {}
     for guard in guards:
         turned = {loop for symbol in guard.leaves() for loop in redrawn_in(symbol)}
         level = max((position[loop] for loop in turned if loop in position), default=-1)
-        tests = sorted(_comparisons(guard), key=lambda symbol: symbol.number) if _by_data(guard) else []
+        sides = {side for test in _comparisons(guard) for side, _ in _sides(test)} if _by_data(guard) else ()
+        tests = sorted(sides, key=lambda symbol: symbol.number)
         found.setdefault(level, []).append((guard, tests))
     return found
 

@@ -10,8 +10,9 @@ from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass, replace
 from math import gcd, prod
 
-from beatwise.model.access import Access, LoopInstance
-from beatwise.model.form import COUNT, Form, Symbol, both, bounds, number, redrawn_in, symbol_form
+from beatwise.model.access import Access, LoopInstance, Recurrence
+from beatwise.model.form import COUNT, Form, Symbol, bounds, number, redrawn_in, symbol_form
+from beatwise.model.operations import both
 from beatwise.model.traffic import Basis, Pattern, Walk
 from beatwise.traffic.compiled import compiled
 from beatwise.traffic.replay import STEPS_AT_MOST, Walker
@@ -293,7 +294,11 @@ def _boxed(
     mean = float(run) if thinned is None else thinned
     if pattern in ("repeated", "descending", "strided"):
         mean = 1.0
-    if pattern in ("descending", "strided") and decided is None and all(t.basis in ("constant", "given") for t in trips):
+    if (
+        pattern in ("descending", "strided")
+        and decided is None
+        and all(t.basis in ("constant", "given") for t in trips)
+    ):
         if not any(map(_drawn, strides)):
             jumps = [compiled(stride)(dict(sizes)) for stride in strides]
             mean = _counted_run([t.count for t in trips], jumps, access.element_bytes)
@@ -398,7 +403,9 @@ def _by_walking(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, i
     }  # fmt: skip
     walker = Walker(access, sizes, fixed, rows)
     seen = walker.walk()
-    let_in = Walker(access, sizes, fixed, rows, let_in=True).walk() if walker.drawn and not _own_counter(access) else seen
+    let_in = (
+        Walker(access, sizes, fixed, rows, let_in=True).walk() if walker.drawn and not _own_counter(access) else seen
+    )
     basis = _worst([t.basis for t in trips])
     if any(_ends_by_itself(t.loop) for t in trips):
         basis = _worst([t.basis for t in trips if not _ends_by_itself(t.loop)])
@@ -412,7 +419,7 @@ def _by_walking(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, i
         return Walk("unresolved", None, None, basis, None, f"it does not run in the first {STEPS_AT_MOST} iterations")
     if not seen.executions:
         return Walk("single", None, None, basis, 0.0)
-    executions = float(seen.executions) if seen.whole and not _guarded(access, trips) else _product(trips)
+    executions = float(let_in.executions) if let_in.whole else _product(trips)
     if seen.executions == 1 and seen.whole:
         return Walk("single", None, 1.0, basis, 1.0)
     pattern, step = _seen_pattern(let_in.inner_steps or let_in.steps, access.element_bytes)
@@ -423,6 +430,8 @@ def _by_walking(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, i
         basis = "data" if mean is None or mean < 2 else basis
         return Walk("indirect", None, mean, basis, executions, access.taken, *_multiples(access, trips))
     start, length = _multiples(access, trips) if pattern == "sequential" else (access.element_bytes,) * 2
+    if basis == "constant" and pattern == "sequential" and seen.whole:
+        start, length = max(start, gcd(START_MULTIPLE, seen.starts)), max(length, seen.lengths)
     return Walk(pattern, step, mean, basis, executions, access.taken, start, length)
 
 
@@ -434,8 +443,32 @@ def _multiples(access: Access, trips: Sequence[Trips]) -> tuple[int, int]:
         step = access.offset.coefficient(inner.loop.counter)
         if step is not None and step.known == access.element_bytes:
             rest, length = access.offset.without(inner.loop.counter), access.element_bytes * _multiple(inner)
-    start = gcd(START_MULTIPLE, *(abs(factor) for factor in rest.terms.values()))
+    start = START_MULTIPLE
+    carried = {r.symbol: r for loop in access.loops for r in loop.recurrences}
+    for monomial, factor in rest.terms.items():
+        for symbol in monomial:
+            factor *= _symbol_multiple(symbol, carried)
+        start = gcd(start, factor)
     return max(start, access.element_bytes), length
+
+
+def _symbol_multiple(symbol: Symbol, carried: Mapping[Symbol, Recurrence]) -> int:
+    """What a carried variable is known to be a multiple of: of where it starts and of all its steps."""
+    if symbol not in carried:
+        return 1
+    multiple = 0
+    waiting = [carried[symbol].next]
+    for factor in carried[symbol].first.terms.values():
+        multiple = gcd(multiple, factor)
+    while waiting:
+        form = waiting.pop()
+        (only,) = form.symbols() if len(form.symbols()) == 1 else (symbol,)
+        if only.kind == "operation" and only.name == "select" and form == symbol_form(only):
+            waiting += only.operands[1:]
+            continue
+        for monomial, factor in (form - symbol_form(symbol)).terms.items():
+            multiple = gcd(multiple, 1 if symbol in monomial else factor)
+    return max(1, multiple)
 
 
 def _ends_by_itself(loop: LoopInstance) -> bool:

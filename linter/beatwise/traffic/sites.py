@@ -7,7 +7,8 @@ from collections.abc import Hashable, Mapping, Sequence
 from dataclasses import dataclass
 
 from beatwise.model.access import Access, Guard
-from beatwise.model.form import Form, negation
+from beatwise.model.form import Form
+from beatwise.model.operations import negation
 from beatwise.traffic.motion import moving_loop
 
 Conditions = frozenset[Form]
