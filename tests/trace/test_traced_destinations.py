@@ -215,3 +215,27 @@ def test_a_copy_goes_where_data_says() -> None:
         write  a[64*rows + 4*copied]  4 B  rows xn  copied x16  picks (mask[4*rows] != 0)  a|b by mask[4*rows]
         write  b[64*rows + 4*copied]  4 B  rows xn  copied x16  picks (mask[4*rows] == 0)  a|b by mask[4*rows]
     """)
+
+
+def test_a_place_that_is_picked_by_reference() -> None:
+    found = accesses(
+        "rows: for (int i = 0; i < 8; ++i) put(mask[i] ? a[i] : b[table[i]]);",
+        before="static void put(int &x) { x = 1; }",
+    )
+    assert found == lines("""
+        read  mask[4*rows]  4 B  rows x8
+        read  table[4*rows]  4 B  rows x8  if (mask[4*rows] == 0)
+        write  a[4*rows]  4 B  rows x8  picks (mask[4*rows] != 0)  a|b by mask[4*rows]
+        write  b[4*table[4*rows]]  4 B  rows x8  picks (mask[4*rows] == 0)  a|b by mask[4*rows]
+    """)
+
+
+def test_a_value_that_is_picked_for_a_reference_is_read_once() -> None:
+    found = accesses(
+        "rows: for (int i = 0; i < 8; ++i) out[i] = twice(mask[i] ? n : 3);",
+        before="static int twice(const int &x) { return 2 * x; }",
+    )
+    assert found == lines("""
+        read  mask[4*rows]  4 B  rows x8
+        write  out[4*rows]  4 B  rows x8
+    """)

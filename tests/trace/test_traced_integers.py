@@ -133,3 +133,28 @@ def test_a_choice_of_the_lesser_is_a_minimum_and_no_other_choice_is() -> None:
         write  a[4*min(3, in[4*rows])]  4 B  rows x8
         write  b[4*select((3 < in[4*rows]), 2, in[4*rows])]  4 B  rows x8
     """)
+
+
+def test_a_narrowing_cast_wraps_in_a_loop_whose_end_is_found_later() -> None:
+    found = accesses(
+        """
+        int i = 0;
+        rows: while (i < 500) {
+            short s = i;
+            out[(unsigned char)(3 * i)] = 1;
+            a[s] = 1;
+            i++;
+        }
+        """
+    )
+    assert found == lines("""
+        write  out[4*uint8(3*rows)]  4 B  rows x500
+        write  a[4*rows]  4 B  rows x500
+    """)
+
+
+def test_a_negative_factor_of_an_unsigned_counter_goes_down() -> None:
+    found = accesses("rows: for (unsigned j = 0; j < 8; ++j) out[-1 * j + 7] = 1;")
+    assert found == lines("""
+        write  out[28 - 4*rows]  4 B  rows x8
+    """)

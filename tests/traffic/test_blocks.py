@@ -10,7 +10,7 @@ import pytest
 from beatwise.model import form as forms
 from beatwise.model.access import Access, Guard, Recurrence
 from beatwise.model.form import number, symbol_form
-from beatwise.model.operations import equal, less, negation, select
+from beatwise.model.operations import equal, floordiv, less, negation, select
 from beatwise.traffic import measure
 from traffic.nests import HBM, at, choice, drawn, loop, place, read, trace, traffic, write
 

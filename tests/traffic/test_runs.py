@@ -373,11 +373,10 @@ def formed_accesses(draw: st.DrawFn) -> Access:
     small = st.integers(1, 12)
     for name in "ijk"[: draw(st.integers(1, 3))]:
         trips: Form = number(draw(small))
-        if values and draw(st.booleans()):
+        if draw(st.booleans()) and values:
             outer = draw(st.sampled_from(values))
-            trips = draw(
-                st.sampled_from([maximum(minimum(trips, outer), number(0)), mask(outer, 3), floordiv(outer, number(2))])
-            )
+            least = maximum(minimum(trips, outer), number(0))
+            trips = draw(st.sampled_from([least, mask(outer, 3), floordiv(outer, number(2))]))
         made = loop(name, trips)
         values.append(at(made))
         kind = draw(st.sampled_from(["plain", "plain", "ring", "doubled", "until", "exit"]))

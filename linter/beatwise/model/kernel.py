@@ -337,6 +337,8 @@ class Case:
 
 @dataclass(frozen=True, slots=True)
 class Switch:
+    """``switch``: the first case that holds ``subject`` is entered, else the one with ``default``."""
+
     subject: Expression
     cases: tuple[Case, ...]
     place: Place
@@ -352,6 +354,8 @@ class Leave:
 
 @dataclass(frozen=True, slots=True)
 class Return:
+    """``return``."""
+
     value: Expression | None
     place: Place
 

@@ -57,6 +57,7 @@ class Traffic:
 
     @property
     def loss_gbps(self) -> float:
+        """GB/s that the access could get and does not."""
         return max(0.0, self.could_gbps - self.now_gbps)
 
 

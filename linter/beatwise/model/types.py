@@ -60,6 +60,7 @@ class ArrayType:
 
     @property
     def bytes(self) -> int:
+        """All elements; 0 where the count is not known."""
         return self.element.bytes * (self.count or 0)
 
 

@@ -402,11 +402,7 @@ class Evaluator(Machine):
                 self._step(by, True, operand, place, state)
                 return self.spot(operand, state)
             case Select(condition=condition, yes=yes, no=no):
-                decided = self.condition(condition, state)
-                if decided.known is not None:
-                    return self.spot(yes if decided.known else no, state)
-                a, b = self.spot(yes, state), self.spot(no, state)
-                return choose_spot(decided, a, b, condition.place) if a is not None and b is not None else None
+                return self._picked_spot(condition, yes, no, state) if self._lies(yes) and self._lies(no) else None
             case Call():
                 if self.gives_place(expression):
                     value = self.call(expression, state)
@@ -417,6 +413,32 @@ class Evaluator(Machine):
                 return self.spot(right, state)
             case _:
                 return None
+
+    def _lies(self, expression: Expression) -> bool:
+        """Whether the expression names a place, by its shape: nothing is evaluated."""
+        match expression:
+            case Name() | Index() | Member() | Unary(op="*") | Assign() | Step(prefix=True):
+                return True
+            case Select(yes=yes, no=no):
+                return self._lies(yes) and self._lies(no)
+            case Call():
+                return self.gives_place(expression)
+            case _:
+                return False
+
+    def _picked_spot(self, condition: Expression, yes: Expression, no: Expression, state: State) -> Spot | None:
+        decided = self.condition(condition, state)
+        if decided.known is not None:
+            return self.spot(yes if decided.known else no, state)
+        guards = state.guards
+        yes_state = state.under(decided, condition.place, self.open)
+        no_state = state.under(negation(decided), condition.place, self.open)
+        a, b = self.spot(yes, yes_state), self.spot(no, no_state)
+        meets = joined(yes_state, no_state, condition.place)
+        if meets is not None:
+            state.become(meets)
+            state.guards = guards
+        return choose_spot(decided, a, b, condition.place) if a is not None and b is not None else None
 
     def gives_place(self, expression: Call) -> bool:
         """Whether a call's result is a place and no value: a reference."""
@@ -437,7 +459,7 @@ class Evaluator(Machine):
                 return _typed(held.spot, bare(declared))
             if held is None:
                 return LocalSpot(root, (), bare(declared))
-        return replace_type(spot, bare(declared))
+        return _typed(spot, bare(declared))
 
     def define_global(self, key: str, state: State) -> None:
         """A global comes into being when it is first used."""
@@ -595,17 +617,15 @@ class Evaluator(Machine):
     # -------------------------------------------------------------------------------- provided by the next part
 
     def call(self, expression: Call, state: State) -> Value:
+        """What a call gives."""
         raise NotImplementedError
 
     def build(self, expression: Build, state: State) -> Value:
+        """A constructed value."""
         raise NotImplementedError
 
 
 PLACES = (MemorySpot, LocalSpot, ChoiceSpot, LostSpot)
-
-
-def replace_type(spot: LocalSpot, kind: Type) -> LocalSpot:
-    return spot if spot.type == kind else LocalSpot(spot.root, spot.path, kind)
 
 
 def _typed(spot: Spot, kind: Type) -> Spot:

@@ -13,9 +13,11 @@ Test = tuple[Form, int | None]  #: (x, 3) is x == 3; (x, None) is x < 0
 
 
 def always(condition: Form) -> bool:
-    """Whether the condition is 1 for every outcome of its tests; those of one value against constants exclude each other.
+    """Whether the condition is 1 for every outcome of its tests.
 
-    >>> from beatwise.model.form import parameter, symbol_form
+    Tests of one value against several constants exclude each other.
+
+    >>> from beatwise.model.form import number, parameter, symbol_form
     >>> from beatwise.model.operations import either, equal, negation
     >>> x = symbol_form(parameter("x", 0, None))
     >>> always(either(equal(x, number(1)), negation(equal(x, number(1)))))

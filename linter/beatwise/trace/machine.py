@@ -135,11 +135,13 @@ class Machine:
     # ------------------------------------------------------------------------------------------- bookkeeping
 
     def step(self) -> None:
+        """Counts a statement or expression that is followed."""
         self.steps += 1
         if self.steps > STEPS_AT_MOST:
             raise OutOfSteps
 
     def new_loop(self) -> int:
+        """The number of the next loop."""
         return next(self._loops)
 
     def root(self, key: str) -> Root:
@@ -323,6 +325,7 @@ class Machine:
                 return
 
     def stream_name(self, spot: LocalSpot) -> str:
+        """A FIFO's name: its variable, and the field it is in."""
         variable = self.variable_name(spot.root)
         return ".".join([variable, *(step for step in spot.path if isinstance(step, str))])
 
@@ -382,6 +385,7 @@ class Machine:
                 return Flow(state)
 
     def run_all(self, body: Sequence[Statement], state: State) -> Flow:
+        """Follows statements in order; ``state`` is used up."""
         flow = Flow(state)
         for statement in body:
             if flow.next is None:
@@ -458,6 +462,7 @@ class Machine:
     # ------------------------------------------------------------------------------- provided by the other parts
 
     def value(self, expression: Expression, state: State) -> Value:
+        """What the expression gives; what it does to variables happens in ``state``."""
         raise NotImplementedError
 
     def number(self, expression: Expression, state: State) -> Form:
@@ -478,12 +483,15 @@ class Machine:
         return truth(self.number(expression, state))
 
     def returned(self, expression: Expression, state: State) -> Value:
+        """What a return statement gives: a pointer to the place where the function's result is a reference."""
         raise NotImplementedError
 
     def declare(self, variable: Variable, state: State) -> None:
+        """A local or static variable comes into being."""
         raise NotImplementedError
 
     def loop(self, statement: Loop, state: State) -> Flow:
+        """Follows a loop: its body once, for all iterations."""
         raise NotImplementedError
 
 

@@ -280,11 +280,10 @@ def _first_false(condition: Form, loop_counter: Symbol) -> Form | None:
         start = gap.without(loop_counter)
         low, high = bounds(slope)
         if high is not None and high <= 0:
-            return None
+            lowest = bounds(start)[0]
+            return ZERO if lowest is not None and lowest >= 0 else None
         if slope.known == 1:
             return _at_least_zero(-start)
-        if slope.known is not None or low is None or low >= 0:
-            return _at_least_zero(floordiv(slope - start - 1, slope))
         return _at_least_zero(floordiv(slope - start - 1, slope))
     sides = _operands(condition, "ne")
     if sides is not None:

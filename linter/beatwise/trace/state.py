@@ -42,6 +42,7 @@ class State:
         self.written: set[tuple[Root, Path]] | None = None  #: what a scouting run has changed
 
     def copy(self) -> State:
+        """A state that may change on its own; what it has written is still noted in the same set."""
         twin = State(dict(self.cells), self.guards)
         twin.written = self.written
         return twin
@@ -193,6 +194,7 @@ def forms_in(value: Value) -> Iterator[Form]:
 
 
 def forms_of_spot(spot: Spot) -> Iterator[Form]:
+    """The forms that say where a spot is."""
     match spot:
         case MemorySpot():
             yield spot.offset
@@ -226,6 +228,7 @@ def replaced(value: Value, values: Mapping[Symbol, Form], memo: dict[Symbol, For
 
 
 def replaced_spot(spot: Spot, values: Mapping[Symbol, Form], memo: dict[Symbol, Form]) -> Spot:
+    """The spot with symbols replaced."""
     if all(values.keys().isdisjoint(form.leaves()) for form in _all_forms(spot)):
         return spot
     match spot:

@@ -30,8 +30,8 @@ def steered(accesses: Sequence[Access]) -> tuple[Access, ...]:
             names = tuple(
                 name for name in dict.fromkeys(a.argument for a in together) if not _in_any_case(name, together)
             )
-            if len(names) < 2:
-                continue
+            if len({_branches(name, together) for name in names}) < 2:
+                continue  # they go together, in whichever branch
             for at in family:
                 if accesses[at].argument in names:
                     others = [access for access in together if access.argument in names]
@@ -54,6 +54,12 @@ def _in_any_case(argument: str, family: Sequence[Access]) -> bool:
                 condition = both(condition, guard.condition)
             reached = either(reached, condition)
     return always(reached)
+
+
+def _branches(argument: str, family: Sequence[Access]) -> frozenset[tuple[Form, ...]]:
+    """The conditions under which the argument is used, one for each branch."""
+    own = (access for access in family if access.argument == argument)
+    return frozenset(tuple(guard.condition for guard in access.guards) for access in own)
 
 
 def _decides(guard: Guard, access: Access) -> bool:

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 
 from beatwise.model.access import Access, LoopInstance
-from beatwise.model.form import Form, Symbol
+from beatwise.model.form import Form, Symbol, redrawn_in
 
 
 def varies(form: Form, loop: LoopInstance) -> bool:
@@ -35,6 +35,8 @@ def drawn_in(form: Form, loop: LoopInstance, loops: Sequence[LoopInstance]) -> b
     while todo:
         for symbol in todo.pop().leaves():
             if symbol.kind == "data" and loop.number in symbol.loops:
+                return True
+            if any(other.kind == "data" for other in symbol.depends) and loop.number in redrawn_in(symbol):
                 return True
             if symbol in carried and symbol not in seen:
                 seen.add(symbol)

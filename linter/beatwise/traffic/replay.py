@@ -126,6 +126,7 @@ class Walker:
         self.oldest = min((loop.counter.number for loop in access.loops), default=0)
 
     def walk(self) -> Seen:
+        """What is seen from the first iteration to the last, or until there is enough."""
         try:
             if self._open(-1):
                 self._level(0)
@@ -187,7 +188,7 @@ class Walker:
             self.values[outcome.symbol] = compiled(outcome.form)(self.values)
 
     def _open(self, level: int) -> bool:
-        """Whether the conditions that are settled in the loop at ``level`` (-1: before all loops) let the access run."""
+        """Whether the conditions that the loop at ``level`` settles (-1: before all loops) let the access run."""
         values = self.values
         for guard, coins in self.gates.get(level, ()):
             for coin in coins:
