@@ -9,7 +9,7 @@ from hypothesis import strategies as st
 
 from beatwise.model import form as forms
 from beatwise.model.form import Form, Symbol, number, symbol_form
-from beatwise.model.operations import both, equal, less, negation, select
+from beatwise.model.operations import both, equal, less, mask, mod, negation, select
 from beatwise.trace.logic import always
 from beatwise.trace.recurrence import Carry, Solved, solve, trips_while
 from helpers.forms import evaluate
@@ -120,6 +120,18 @@ def test_a_ring_as_long_as_an_argument_is_closed(size: int) -> None:
     assert found.closed[X] + found.closed[Y] == k, "the row and the column together are one walk"
 
 
+@given(st.integers(0, 20), small, st.integers(1, 12), st.booleans())
+def test_a_ring_counter_by_remainder_or_mask_is_right_where_it_is_closed(
+    first: int, step: int, size: int, masked: bool
+) -> None:
+    next_ = mask(x + step, size % 5 + 1) if masked else mod(x + step, number(size))
+    carries = [Carry(X, number(first), next_)]
+    found = solved(*carries)
+    assert holds(found, carries)
+    if first < size and step >= 0 and not masked:
+        assert found.left == ()
+
+
 def test_what_has_no_closed_form_is_left_with_what_it_depends_on() -> None:
     drawn = forms.data("mask", None, (LOOP,))
     carry = Carry(X, number(0), select(equal(symbol_form(drawn), number(0)), x + 1, x))
@@ -152,6 +164,11 @@ def test_a_loop_runs_until_two_sides_are_equal(step: int, first: int, turns: int
     condition = negation(equal(k * step + first, number(first + step * turns)))
     count = trips_while(condition, K).count
     assert count is not None and count.known == turns
+
+
+def test_a_loop_that_steps_over_its_end_has_no_count() -> None:
+    assert trips_while(negation(equal(k * 3, number(10))), K).count is None
+    assert trips_while(negation(equal(k + 5, number(3))), K).count is None
 
 
 @given(small, small, st.integers(1, 9), st.integers(1, 9))

@@ -17,7 +17,8 @@ from beatwise.model.form import Form, Symbol, number
 from beatwise.model.form import symbol_form as form_of
 from beatwise.model.operations import equal, floordiv, less, mask, maximum, minimum, negation, select
 from beatwise.model.traffic import Walk
-from beatwise.traffic.runs import ASSUMED_TRIPS, walk
+from beatwise.traffic.runs import walk
+from beatwise.traffic.trips import ASSUMED_TRIPS
 from generated.nests import ELEMENT_BYTES, Nest
 from generated.strategies import nests
 from helpers.forms import evaluate

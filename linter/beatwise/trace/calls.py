@@ -118,7 +118,7 @@ class Caller(Builtins):
         self.frame = frame
         self.calls.append(function.key)
         if self._starts_process(outer):
-            self.process = function.name
+            self.process = self._process_named(function.name, place)
         written, state.written = state.written, None
         for parameter, bound in zip(function.parameters, arguments, strict=False):
             self.bind(parameter, bound, state)
@@ -139,6 +139,13 @@ class Caller(Builtins):
         """The variables of a call that has ended are gone, but for what its result points to."""
         kept = {spot.root for spot in _spots_in(result)}
         state.cells = {root: cells for root, cells in state.cells.items() if root[1] < since or root in kept}
+
+    def _process_named(self, name: str, place: Place) -> str:
+        """A name for the process that a call starts; each call is a process of its own."""
+        calls = self.processes.setdefault(name, [])
+        if place not in calls:
+            calls.append(place)
+        return name if calls[0] == place else f"{name} (line {place.line})"
 
     def _starts_process(self, outer: Frame) -> bool:
         return self.process is None and any(d.kind == "dataflow" for d in outer.function.directives)
@@ -274,7 +281,7 @@ class Caller(Builtins):
             if isinstance(closure, Closure):
                 process, self.process = self.process, None
                 function = self.program.functions.get(closure.key)
-                self.process = process or (function.name if function is not None else None)
+                self.process = process or (self._process_named(function.name, place) if function is not None else None)
                 self._closure_call(closure, arguments[at + 1 :], place, state)
                 self.process = process
                 return Record({})

@@ -130,6 +130,7 @@ class Machine:
         self._activations = count(1)
         self._loops = count(1)
         self.calls: list[str] = []
+        self.processes: dict[str, list[Place]] = {}  #: by function: the calls that start it as a process
         self.jumps: dict[tuple[Place, ...], int] = {}  #: by the calls that lead there: the line of a goto
 
     # ------------------------------------------------------------------------------------------- bookkeeping

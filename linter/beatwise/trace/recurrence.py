@@ -6,7 +6,7 @@ from collections.abc import Sequence
 from dataclasses import dataclass, replace
 
 from beatwise.model.form import COUNT, ONE, ZERO, Form, Symbol, bounds, number, symbol_form
-from beatwise.model.operations import both, equal, floordiv, mask, maximum, minimum, negation, select
+from beatwise.model.operations import both, equal, floordiv, mask, maximum, minimum, mod, negation, select
 from beatwise.model.substitution import substitute
 
 
@@ -116,10 +116,29 @@ def _closed_form(
         delta = wrapped[0] - x
         if delta.known is not None:
             return mask(carry.first + k * delta.known, wrapped[1].constant)
+    masked = _masked(step, carry.symbol)
+    if masked is not None:
+        by, modulus = masked
+        low, high = bounds(carry.first)
+        if low is not None and high is not None and 0 <= low <= high < modulus:
+            return mod(carry.first + k * by, number(modulus))
     delta = step - x
     if not varies(delta, pending, inside):
         return _summed(carry.first, delta, loop_counter)
     return _ticking(carry, step, clocks, pending, inside, loop_counter)
+
+
+def _masked(step: Form, symbol: Symbol) -> tuple[int, int] | None:
+    """``by`` and ``modulus`` of ``(x + by) % modulus``, also written ``(x + by) & (modulus - 1)``."""
+    for quotient in step.symbols():
+        if quotient.kind != "operation" or quotient.name not in ("floordiv", "div") or quotient.operands[1].known is None:
+            continue
+        modulus = quotient.operands[1].known
+        by = (quotient.operands[0] - symbol_form(symbol)).known
+        whole = step + symbol_form(quotient) * modulus - symbol_form(symbol)
+        if by is not None and whole.known == by and modulus > 0:
+            return by, modulus
+    return None
 
 
 def _previous(first: Form, step: Form, loop_counter: Symbol) -> Form | None:
@@ -180,14 +199,18 @@ def _ticking(
         condition, yes, no = choice
         for again, onward, wraps in ((yes, no, condition), (no, yes, negation(condition))):
             stride = (onward - x).known
-            if stride is None or stride <= 0 or again != carry.first or varies(carry.first, pending, inside):
+            if stride is None or stride <= 0 or varies(carry.first, pending, inside) or varies(again, pending, inside):
                 continue
-            period = _period(wraps, x, carry.first, stride)
+            period = _period(wraps, x, again, stride)
             if period is None:
                 continue
+            if again != carry.first:  # it starts somewhere in its range
+                if stride != 1:
+                    continue
+                ticks = ticks + carry.first - again
             turn = floordiv(ticks, period)
             clocks.append((both(tick, wraps), turn))
-            return carry.first + (ticks - turn * period) * stride
+            return again + (ticks - turn * period) * stride
     return None
 
 
@@ -278,7 +301,7 @@ def _first_false(condition: Form, loop_counter: Symbol) -> Form | None:
         if slope is None or loop_counter in slope.leaves() or loop_counter in gap.without(loop_counter).leaves():
             return None
         start = gap.without(loop_counter)
-        low, high = bounds(slope)
+        high = bounds(slope)[1]
         if high is not None and high <= 0:
             lowest = bounds(start)[0]
             return ZERO if lowest is not None and lowest >= 0 else None
@@ -293,7 +316,10 @@ def _first_false(condition: Form, loop_counter: Symbol) -> Form | None:
             return None
         start = gap.without(loop_counter)
         assert slope.known is not None
-        return floordiv(-start, slope) if slope.known > 0 else floordiv(start, number(-slope.known))
+        distance, step = (-start, slope.known) if slope.known > 0 else (start, -slope.known)
+        if distance.known is not None and (distance.known < 0 or distance.known % step):
+            return None  # it steps over its end
+        return floordiv(distance, number(step))
     return None
 
 

@@ -6,31 +6,20 @@ nest (``replay``). Sizes that nobody knows are taken as ``ASSUMED_TRIPS``, and t
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping, Sequence
-from dataclasses import dataclass, replace
+from collections.abc import Mapping, Sequence
+from dataclasses import replace
 from math import gcd, prod
 
 from beatwise.model.access import Access, LoopInstance, Recurrence
-from beatwise.model.form import COUNT, Form, Symbol, bounds, number, redrawn_in, symbol_form
+from beatwise.model.form import COUNT, Form, Symbol, number, redrawn_in, symbol_form
 from beatwise.model.operations import both
 from beatwise.model.traffic import Basis, Pattern, Walk
 from beatwise.traffic.compiled import compiled
 from beatwise.traffic.replay import STEPS_AT_MOST, Walker
+from beatwise.traffic.trips import ASSUMED_TRIPS, Trips, all_trips, is_given, parameters_of, size_of, worst
 
-ASSUMED_TRIPS = 1024  #: of a loop about which nothing is known
 EVEN_CHANCE = 0.5  #: how often data lets a guarded access run, when nothing more is known
 START_MULTIPLE = 4096  #: an argument is taken to start at a multiple of this (common practice, no source)
-_GRAVITY: tuple[Basis, ...] = ("constant", "given", "tripcount", "assumed", "data")
-
-
-@dataclass(frozen=True, slots=True)
-class Trips:
-    """How often a loop runs: a number, the form behind it where it is exact, and where it is from."""
-
-    count: int
-    form: Form | None
-    basis: Basis
-    loop: LoopInstance
 
 
 def walk(access: Access, given: Mapping[str, int]) -> Walk:
@@ -45,29 +34,29 @@ def walk(access: Access, given: Mapping[str, int]) -> Walk:
     left = [loop for loop in access.loops if _leaves(access, loop)]
     if left:
         return _last_of(access, left, given)
-    sizes = {symbol: _size(symbol, given) for symbol in _parameters(access)}
+    sizes = {symbol: size_of(symbol, given) for symbol in parameters_of(access)}
     lost = _lost(access)
     if lost is not None:
-        basis = _worst(t.basis for t in _all_trips(access, sizes))
+        basis = worst(t.basis for t in all_trips(access, sizes))
         return Walk("unresolved", None, None, basis, None, lost)
     found = _measured(access, sizes)
-    if not found.executions and not all(map(_is_given, sizes)):
+    if not found.executions and not all(map(is_given, sizes)):
         found = _measured(*_taken_to_run(access, sizes))
-        found = replace(found, basis=_worst([found.basis, "assumed"]))
+        found = replace(found, basis=worst([found.basis, "assumed"]))
     if access.choice is not None and _by_data(access.choice.selector):
         return _steered(access, found)
     return found
 
 
 def _measured(access: Access, sizes: Mapping[Symbol, int]) -> Walk:
-    trips = _all_trips(access, sizes)
+    trips = all_trips(access, sizes)
     return _by_formula(access, trips, sizes) or _by_walking(access, trips, sizes)
 
 
 def _taken_to_run(access: Access, sizes: Mapping[Symbol, int]) -> tuple[Access, dict[Symbol, int]]:
     """An access that only assumed sizes keep from running: sizes nobody knows then decide no branch, and loops that
     count from one of them count from 0."""
-    unknown = {symbol for symbol in sizes if not _is_given(symbol)}
+    unknown = {symbol for symbol in sizes if not is_given(symbol)}
     guards = tuple(guard for guard in access.guards if not unknown & guard.condition.leaves())
     taken_off = {
         symbol
@@ -109,85 +98,6 @@ def _last_of(access: Access, left: Sequence[LoopInstance], given: Mapping[str, i
         return Walk("single", None, 1.0, "data", 1.0, access.taken)
     executions = walk(replace(outer, offset=number(0)), given).executions
     return Walk("indirect", None, 1.0, "data", executions, access.taken)
-
-
-# ------------------------------------------------------------------------------------------------------- sizes
-
-
-def _parameters(access: Access) -> set[Symbol]:
-    forms = [access.offset, *(guard.condition for guard in access.guards)]
-    for loop in access.loops:
-        forms += [*loop.until, *loop.exits, *(r.next for r in loop.recurrences), *(r.first for r in loop.recurrences)]
-        if loop.trips is not None:
-            forms.append(loop.trips)
-    return {symbol for form in forms for symbol in form.leaves() if symbol.kind == "parameter"}
-
-
-def _size(symbol: Symbol, given: Mapping[str, int]) -> int:
-    if symbol.name in given:
-        return given[symbol.name]
-    if symbol.low is not None and symbol.low == symbol.high:
-        return symbol.low
-    return ASSUMED_TRIPS if symbol.high is None else min(ASSUMED_TRIPS, symbol.high)
-
-
-def _is_given(symbol: Symbol) -> bool:
-    return symbol.low is not None and symbol.low == symbol.high
-
-
-def _all_trips(access: Access, sizes: Mapping[Symbol, int]) -> list[Trips]:
-    computed = _computed(access)
-    return [_trips(loop, sizes, computed) for loop in access.loops]
-
-
-def _computed(access: Access) -> set[Symbol]:
-    """The carried variables whose values a walk computes: no data is in them."""
-    steps = {r.symbol: r.first.leaves() | r.next.leaves() for loop in access.loops for r in loop.recurrences}
-    found = set(steps)
-    while lost := {
-        symbol
-        for symbol in found
-        if any(s.kind in ("data", "unknown") or (s.kind == "carried" and s not in found) for s in steps[symbol])
-    }:
-        found -= lost
-    return found
-
-
-def _trips(loop: LoopInstance, sizes: Mapping[Symbol, int], computed: set[Symbol]) -> Trips:
-    """The loop's trips as a number; -1 where they change from one round of the loops around to the next."""
-    form = loop.trips
-    if form is None:
-        if loop.tripcount is not None:
-            return Trips(loop.tripcount, None, "tripcount", loop)
-        return Trips(ASSUMED_TRIPS, None, "assumed", loop)
-    leaves = form.leaves()
-    if any(symbol.kind in ("data", "unknown", "carried") and symbol not in computed for symbol in leaves):
-        high = bounds(form)[1]
-        if loop.tripcount is not None:
-            return Trips(loop.tripcount, form, "tripcount", loop)
-        return Trips(
-            min(ASSUMED_TRIPS, high) if high is not None and high > 0 else ASSUMED_TRIPS, form, "assumed", loop
-        )
-    unknown = [symbol for symbol in leaves if symbol.kind == "parameter" and not _is_given(symbol)]
-    if unknown and loop.tripcount is not None:
-        return Trips(loop.tripcount, form, "tripcount", loop)
-    if any(symbol.kind == "counter" or symbol in computed for symbol in leaves):
-        return Trips(-1, form, "assumed" if unknown else "constant", loop)
-    count = compiled(form)(dict(sizes))
-    if unknown:
-        high = bounds(form)[1]
-        simple = len(leaves) == 1 and len(form.terms) <= 2
-        return Trips(count if simple or high is not None else ASSUMED_TRIPS, form, "assumed", loop)
-    given = any(symbol.kind == "parameter" for symbol in leaves)
-    return Trips(max(0, count), form, "given" if given else "constant", loop)
-
-
-def _worst(bases: Iterable[Basis]) -> Basis:
-    worst: Basis = "constant"
-    for basis in bases:
-        if _GRAVITY.index(basis) > _GRAVITY.index(worst):
-            worst = basis
-    return worst
 
 
 def _by_data(form: Form) -> bool:
@@ -241,7 +151,7 @@ def _by_formula(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, i
     if counters & rest.leaves():
         return None
     if not all(compiled(g.condition)(dict(sizes)) for g in access.guards if not _drawn(g.condition)):
-        return Walk("single", None, None, _worst([t.basis for t in trips]), 0)
+        return Walk("single", None, None, worst([t.basis for t in trips]), 0)
     return _boxed(access, trips, strides, rest, sizes)
 
 
@@ -290,7 +200,7 @@ def _boxed(
             start_multiple = (
                 gcd(start_multiple, *(abs(f) for f in stride.terms.values())) if stride.terms else start_multiple
             )
-    basis = _worst(run_basis) if run_basis else _worst([t.basis for t in trips])
+    basis = worst(run_basis) if run_basis else worst([t.basis for t in trips])
     mean = float(run) if thinned is None else thinned
     if pattern in ("repeated", "descending", "strided"):
         mean = 1.0
@@ -334,7 +244,7 @@ def _counted_run(counts: Sequence[int], strides: Sequence[int], element: int) ->
 def _pattern(stride: Form, value: int | None, element: int) -> tuple[Pattern, int | None]:
     if not stride.terms:
         return "repeated", 0
-    known = stride.known if stride.known is not None else value if all(map(_is_given, stride.leaves())) else None
+    known = stride.known if stride.known is not None else value if all(map(is_given, stride.leaves())) else None
     if known == element:
         return "sequential", element
     if known == -element:
@@ -349,7 +259,7 @@ def _joins(stride: Form, value: int | None, run_form: Form | None, run_bytes: in
     if run_form is not None and stride == run_form:
         return True
     exact = all(basis in ("constant", "given") for basis in bases)
-    exact = exact and all(_is_given(symbol) for symbol in stride.leaves() if symbol.kind == "parameter")
+    exact = exact and all(is_given(symbol) for symbol in stride.leaves() if symbol.kind == "parameter")
     return exact and value == run_bytes
 
 
@@ -406,10 +316,10 @@ def _by_walking(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, i
     let_in = (
         Walker(access, sizes, fixed, rows, let_in=True).walk() if walker.drawn and not _own_counter(access) else seen
     )
-    basis = _worst([t.basis for t in trips])
+    basis = worst([t.basis for t in trips])
     if any(_ends_by_itself(t.loop) for t in trips):
-        basis = _worst([t.basis for t in trips if not _ends_by_itself(t.loop)])
-        if any(not _is_given(symbol) for symbol in sizes):
+        basis = worst([t.basis for t in trips if not _ends_by_itself(t.loop)])
+        if any(not is_given(symbol) for symbol in sizes):
             basis = "assumed"
     indirect = _indirect(access, trips)
     if _guarded(access, trips):
