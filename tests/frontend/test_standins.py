@@ -63,7 +63,7 @@ def cursors(at: Cursor) -> Iterator[Cursor]:
 def qualified(cursor: Cursor) -> str:
     above = cursor.semantic_parent
     outer = qualified(above) + "::" if above is not None and above.kind != CursorKind.TRANSLATION_UNIT else ""
-    return outer + cursor.spelling
+    return outer + str(cursor.spelling)
 
 
 CASES = {

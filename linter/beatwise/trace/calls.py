@@ -152,12 +152,11 @@ class Caller(Builtins):
 
     def _initialize(self, name: str, initial: Expression, state: State) -> None:
         this = self.frame.this
-        if isinstance(initial, Build) and initial.function in self.program.functions and this is not None:
-            function = self.program.functions[initial.function]
-            fields = {field.name for field in this.type.fields} if isinstance(this, LocalSpot | MemorySpot) and isinstance(
-                this.type, RecordType
-            ) else set()
-            if name not in fields and function.body is not None:  # the base's constructor, on the same object
+        if isinstance(initial, Build) and initial.function is not None and this is not None:
+            function = self.program.functions.get(initial.function)
+            own = this.type if isinstance(this, LocalSpot | MemorySpot) else None
+            fields = {field.name for field in own.fields} if isinstance(own, RecordType) else set()
+            if name not in fields and function is not None and function.body is not None:  # the base's constructor
                 self.enter(function, self._arguments(function, initial.arguments, state), this, initial.place, state)
                 return
         if isinstance(this, LocalSpot):

@@ -255,7 +255,7 @@ class Evaluator(Machine):
                 )  # fmt: skip
                 return Pointer(shifted(pointer.spot, other.form if op == "+" else -other.form, pointee))
             if op in ("==", "!=") and isinstance(other, Number) and other.form.known == 0:
-                return Number(ZERO if op == "==" else ONE)
+                return Number(negation(pointer.valid) if op == "==" else pointer.valid)
             return self.lost("arithmetic on a pointer", place)
         a, b = self._form_of(left), self._form_of(right)
         if isinstance(kind, RealType):

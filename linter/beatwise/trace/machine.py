@@ -29,7 +29,7 @@ from beatwise.model.kernel import (
     Switch,
     Variable,
 )
-from beatwise.model.operations import either, equal, negation, truth
+from beatwise.model.operations import both, either, equal, negation, truth
 from beatwise.model.place import Place
 from beatwise.model.types import (
     ArrayType,
@@ -473,7 +473,7 @@ class Machine:
             case Number(form):
                 return form
             case Pointer(spot):
-                return _address(spot)
+                return both(value.valid, _address(spot))
             case Record(parts):
                 return depending(*(part.form for part in parts.values() if isinstance(part, Number)))
             case Closure():

@@ -131,9 +131,11 @@ def _closed_form(
 def _masked(step: Form, symbol: Symbol) -> tuple[int, int] | None:
     """``by`` and ``modulus`` of ``(x + by) % modulus``, also written ``(x + by) & (modulus - 1)``."""
     for quotient in step.symbols():
-        if quotient.kind != "operation" or quotient.name not in ("floordiv", "div") or quotient.operands[1].known is None:
+        if quotient.kind != "operation" or quotient.name not in ("floordiv", "div"):
             continue
         modulus = quotient.operands[1].known
+        if modulus is None:
+            continue
         by = (quotient.operands[0] - symbol_form(symbol)).known
         whole = step + symbol_form(quotient) * modulus - symbol_form(symbol)
         if by is not None and whole.known == by and modulus > 0:

@@ -6,7 +6,7 @@ from collections.abc import Iterator, Mapping
 
 from beatwise.model.access import Guard
 from beatwise.model.form import ONE, Form, Symbol, number
-from beatwise.model.operations import both, either, lookup, negation, select
+from beatwise.model.operations import both, either, equal, lookup, negation, select
 from beatwise.model.place import Place
 from beatwise.model.substitution import substitute
 from beatwise.trace.logic import always
@@ -28,6 +28,7 @@ from beatwise.trace.values import (
     picked,
 )
 
+CHOSEN_AT_MOST = 16  #: elements of an on-chip array among which an index is followed
 ANY = "*"  #: in a cell's path: some element, no one knows which
 Cells = Mapping[Path, Value]
 
@@ -94,9 +95,11 @@ class State:
                 if inner is not None:
                     found[step.known] = inner
         numbers = {at: value.form.known for at, value in found.items() if isinstance(value, Number)}
-        if found and not hazy and len(numbers) == len(found) and None not in numbers.values():
-            if sorted(numbers) == list(range(len(numbers))):
+        if found and not hazy and len(numbers) == len(found):
+            if None not in numbers.values() and sorted(numbers) == list(range(len(numbers))):
                 return Number(lookup(tuple(value or 0 for _, value in sorted(numbers.items())), index))
+            if len(numbers) <= CHOSEN_AT_MOST:
+                return Number(_one_of(index, {at: v.form for at, v in found.items() if isinstance(v, Number)}))
         pointers = {at: value.spot for at, value in found.items() if isinstance(value, Pointer)}
         if pointers and not hazy:
             return Pointer(picked(index, pointers, place))
@@ -165,6 +168,14 @@ class State:
         return twin
 
 
+def _one_of(index: Form, elements: Mapping[int, Form]) -> Form:
+    """The element that the index picks."""
+    (_, result), *others = sorted(elements.items(), reverse=True)
+    for at, form in others:
+        result = select(equal(index, number(at)), form, result)
+    return result
+
+
 def covers(wide: Path, narrow: Path) -> bool:
     """Whether a cell at ``wide`` may hold (or hold a whole that holds) what lies at ``narrow``."""
     if len(wide) > len(narrow):
@@ -219,8 +230,8 @@ def replaced(value: Value, values: Mapping[Symbol, Form], memo: dict[Symbol, For
             new = substitute(form, values, memo)
             return value if new is form else Number(new)
         case Pointer(spot):
-            new_spot = replaced_spot(spot, values, memo)
-            return value if new_spot is spot else Pointer(new_spot)
+            new_spot, valid = replaced_spot(spot, values, memo), substitute(value.valid, values, memo)
+            return value if new_spot is spot and valid is value.valid else Pointer(new_spot, valid)
         case Record(parts):
             return Record({path: replaced(part, values, memo) for path, part in parts.items()})
         case Closure():

@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass, replace
 
-from beatwise.model.form import ZERO, Form, number, opaque, symbol_form
+from beatwise.model.form import ONE, ZERO, Form, number, opaque, symbol_form
 from beatwise.model.operations import both, equal, negation, select
 from beatwise.model.place import Place
 from beatwise.model.types import ArrayType, Type, UnknownType, VoidType
@@ -76,9 +76,10 @@ class Number:
 
 @dataclass(frozen=True, slots=True)
 class Pointer:
-    """The address of a spot; also what a reference is bound to."""
+    """The address of a spot; also what a reference is bound to. ``valid`` is 0 where it is null instead."""
 
     spot: Spot
+    valid: Form = ONE
 
 
 @dataclass(frozen=True, slots=True)
@@ -178,12 +179,14 @@ def choose(condition: Form, yes: Value | None, no: Value | None, place: Place) -
     if isinstance(yes, Number) and isinstance(no, Number):
         return Number(select(condition, yes.form, no.form))
     if isinstance(yes, Pointer) and isinstance(no, Pointer):
-        return Pointer(choose_spot(condition, yes.spot, no.spot, place))
+        return Pointer(choose_spot(condition, yes.spot, no.spot, place), select(condition, yes.valid, no.valid))
     if isinstance(yes, Record) and isinstance(no, Record):
         paths = [*yes.parts, *(path for path in no.parts if path not in yes.parts)]
         return Record({path: choose(condition, yes.parts.get(path), no.parts.get(path), place) for path in paths})
-    if isinstance(yes, Pointer) or isinstance(no, Pointer):  # the other is null, or lost
-        return yes if isinstance(yes, Pointer) else no
+    if isinstance(yes, Pointer):  # the other is null, or lost
+        return replace(yes, valid=select(condition, yes.valid, ZERO))
+    if isinstance(no, Pointer):
+        return replace(no, valid=select(condition, ZERO, no.valid))
     return Number(depending(condition, *(_form(value) for value in (yes, no))))
 
 
