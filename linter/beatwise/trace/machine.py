@@ -130,6 +130,8 @@ class Machine:
         self._activations = count(1)
         self._loops = count(1)
         self.calls: list[str] = []
+        #: what was loaded in this iteration and not stored to since: by argument, offset, part, type, and loops
+        self.loaded: dict[tuple[str, Form, str, Type, tuple[int, ...]], Symbol] = {}
         self.processes: dict[str, list[Place]] = {}  #: by function: the calls that start it as a process
         self.jumps: dict[tuple[Place, ...], int] = {}  #: by the calls that lead there: the line of a goto
 
@@ -197,11 +199,14 @@ class Machine:
         if isinstance(kind, IntType):
             low = -(1 << kind.bits - 1) if kind.signed else 0
             high = (1 << kind.bits - 1) - 1 if kind.signed else (1 << kind.bits) - 1
-        return Number(
-            symbol_form(
-                data(spot.argument, place, self.open, low=low, high=high, at=spot.offset, depends=spot.offset.leaves())
-            )
-        )
+        key = (spot.argument, spot.offset, spot.covers, kind, self.open)
+        found = self.loaded.get(key)
+        if found is None or self.scouting or self.arguments[spot.argument].volatile:
+            depends = spot.offset.leaves()
+            found = data(spot.argument, place, self.open, low=low, high=high, at=spot.offset, depends=depends)
+            if not self.scouting:
+                self.loaded[key] = found
+        return Number(symbol_form(found))
 
     def _load_local(self, spot: LocalSpot, place: Place, state: State) -> Value:
         if isinstance(spot.type, ArrayType):
@@ -221,6 +226,7 @@ class Machine:
         match spot:
             case MemorySpot():
                 self._access(spot, "write", place, state)
+                self.loaded = {key: symbol for key, symbol in self.loaded.items() if key[0] != spot.argument}
             case LocalSpot():
                 if isinstance(value, Number):
                     value = Number(fitted(value.form, spot.type))
