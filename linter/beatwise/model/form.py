@@ -15,6 +15,7 @@ from typing import Literal
 from beatwise.model.place import Place
 
 Kind = Literal["counter", "parameter", "data", "carried", "unknown", "operation"]
+DEPENDS_AT_MOST = 16  #: symbols that an opaque one names; of more, only those that change in different loops
 TERMS_AT_MOST = 48  #: a longer polynomial is kept as one opaque symbol
 
 COUNT = "how often something happened"  #: the reason of data that counts iterations: it leads on, it does not scatter
@@ -248,10 +249,23 @@ def unknown(
 
 def opaque(reason: str, sources: Iterable[Form]) -> Symbol:
     """A computed value whose form is given up, but not what it depends on (a real number, an overlong polynomial)."""
-    depends: frozenset[Symbol] = frozenset()
-    for source in sources:
-        depends |= source.leaves()
+    depends = frozenset(_told_apart(leaf for source in sources for leaf in source.leaves()))
     return Symbol("unknown", "~", next(_numbers), depends=depends, reason=None if depends else reason)
+
+
+def _told_apart(leaves: Iterable[Symbol]) -> list[Symbol]:
+    """The leaves without those that say nothing more: opaque ones (what they depend on is among the leaves, too), and of
+    the data that changes in the same loops all but the oldest."""
+    found = {leaf for leaf in leaves if not (leaf.name == "~" and leaf.depends)}
+    if len(found) <= DEPENDS_AT_MOST:
+        return list(found)
+    oldest: dict[object, Symbol] = {}
+    for leaf in found:
+        plain = leaf.kind in ("data", "unknown")
+        key = (leaf.kind, leaf.reason, leaf.loops, frozenset(redrawn_in(leaf))) if plain else leaf.number
+        if key not in oldest or leaf.number < oldest[key].number:
+            oldest[key] = leaf
+    return list(oldest.values())
 
 
 _operations: dict[tuple[str, tuple[Form, ...], tuple[int, ...]], int] = {}

@@ -9,8 +9,9 @@ from __future__ import annotations
 from collections.abc import Iterable
 from dataclasses import dataclass, replace
 
-from beatwise.model.access import Direction, Trace
+from beatwise.model.access import Access, Direction, Guard, Trace
 from beatwise.model.finding import LEVELS, Finding, Level
+from beatwise.model.form import redrawn_in
 from beatwise.model.kernel import Problem
 from beatwise.model.place import Place
 from beatwise.model.traffic import Basis, Block, Limit, Pattern, PortTraffic, Traffic
@@ -162,7 +163,7 @@ def _row(traffic: Traffic) -> AccessRow:
         width_bits=traffic.width_bits,
         burst_beats=traffic.burst_beats,
         loop_line=around[-1] if around else None,
-        guarded=any(guard.by_data for guard in access.guards),
+        guarded=any(guard.by_data and _decided_in(guard, access) for guard in access.guards),
         blocked=traffic.blocked,
         executions=walk.executions,
         now_gbps=traffic.now_gbps,
@@ -170,6 +171,12 @@ def _row(traffic: Traffic) -> AccessRow:
         limit=traffic.limit,
         reason=walk.reason or access.unresolved,
     )
+
+
+def _decided_in(guard: Guard, access: Access) -> bool:
+    """Whether the guard is decided anew in a loop around the access, not once before all of them."""
+    numbers = {loop.number for loop in access.loops}
+    return any(numbers & redrawn_in(symbol) for symbol in guard.condition.leaves())
 
 
 def _streams(trace: Trace) -> tuple[StreamRow, ...]:

@@ -6,6 +6,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass, replace
 
 from beatwise.model.access import LoopInstance, Outcome, Recurrence
+from beatwise.model.counting import only_counts
 from beatwise.model.form import (
     COUNT,
     ONE,
@@ -29,7 +30,7 @@ from beatwise.trace.calls import Caller
 from beatwise.trace.expressions import bare
 from beatwise.trace.interfaces import element_type
 from beatwise.trace.machine import Flow
-from beatwise.trace.recurrence import Carry, Solved, Trips, only_counts, solve, trips_while
+from beatwise.trace.recurrence import Carry, Solved, Trips, solve, trips_while
 from beatwise.trace.state import ANY, State, conjunction, joined, replaced, replaced_cells
 from beatwise.trace.values import (
     ChoiceSpot,
@@ -591,6 +592,8 @@ class Looper(Caller):
             outcomes[final] = Outcome(symbol, symbol_form(final))
             last = symbol_form(symbol)
         at_last = dict.fromkeys((final, count_from, provisional), last)
+        if not statement.test_first and not broken:  # the state at the end of the last iteration
+            at_last = {symbol: form - 1 for symbol, form in at_last.items()}
         memo_last: dict[Symbol, Form] = {}
         source = end if end is not None else (flow.breaks[0] if flow.breaks else entry)
         result = State({}, state.guards)

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
 
-from beatwise.model.form import COUNT, ONE, ZERO, Form, Symbol, bounds, number, symbol_form
+from beatwise.model.form import ONE, ZERO, Form, Symbol, bounds, number, symbol_form
 from beatwise.model.operations import both, equal, floordiv, mask, maximum, minimum, mod, negation, select
 from beatwise.model.substitution import substitute
 
@@ -81,17 +81,6 @@ def _reach(carry: Carry, carries: Sequence[Carry]) -> frozenset[Symbol]:
     return frozenset(found)
 
 
-def only_counts(step: Form, symbol: Symbol) -> bool:
-    """Whether what ``symbol`` becomes is itself plus a number, or plus a count, on every branch."""
-    choice = _operands(step, "select")
-    if choice is not None:
-        return all(only_counts(arm, symbol) for arm in choice[1:])
-    if any(s.reason == COUNT and s.name == symbol.name for s in step.symbols()) and len(step.terms) <= 2:
-        return all(s.reason == COUNT for s in step.symbols())
-    moved = step - symbol_form(symbol)
-    return all(s.reason == COUNT or s.kind in ("counter", "parameter") for s in moved.leaves() if s.reason != COUNT)
-
-
 def varies(form: Form, pending: set[Symbol], inside: frozenset[int]) -> bool:
     """Whether the form may change from one iteration of the loop to the next (its counter apart)."""
     return any(
@@ -116,6 +105,13 @@ def _closed_form(
         delta = wrapped[0] - x
         if delta.known is not None:
             return mask(carry.first + k * delta.known, wrapped[1].constant)
+    choice = _operands(step, "select")
+    if choice is not None and loop_counter not in choice[0].leaves() and not varies(choice[0], pending, inside):
+        arms = [
+            _closed_form(replace(carry, next=arm), clocks, loop_counter, pending, inside) for arm in choice[1:]
+        ]  # which branch it is stays the same throughout the loop
+        if arms[0] is not None and arms[1] is not None:
+            return select(choice[0], arms[0], arms[1])
     masked = _masked(step, carry.symbol)
     if masked is not None:
         by, modulus = masked

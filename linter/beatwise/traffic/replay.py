@@ -8,7 +8,7 @@ for all.
 from __future__ import annotations
 
 from collections import Counter
-from collections.abc import Mapping, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass, field
 from math import gcd
 
@@ -115,8 +115,13 @@ class Walker:
         self.guards = [g.condition for g in access.guards if not g.leaves or not _by_data(g.condition)]
         self.free = [g for g in self.guards if not _by_data(g)]
         self.drawn = [g for g in self.guards if _by_data(g)]
-        self.coins = dict(coin for g in self.drawn for symbol in _comparisons(g) for coin in _sides(symbol))
+        tests = {test for g in self.drawn for test in _comparisons(g)}
+        for form in (access.offset, *(r.next for loop in access.loops for r in loop.recurrences)):
+            tests |= _deciding(form)
+        self.coins = dict(coin for test in sorted(tests, key=_age) for coin in _sides(test))
         self.coin_loops = {coin: _tossed_in(coin) for coin in self.coins}
+        self.constants = _constants(self.coins)
+        self.picks: dict[Form, int | None] = {}
         self.by_loop = _drawn_in(access)
         self.decided: dict[Symbol, int] = {}
         if let_in:
@@ -169,6 +174,9 @@ class Walker:
             self.steps += 1
             if self.steps > STEPS_AT_MOST:
                 raise Enough
+            for coin, loops in self.coin_loops.items():
+                if loop.number in loops:
+                    self._toss(coin)
             if self._open(level):
                 if innermost:
                     self.seen.take(compiled(self.access.offset)(values), k > 0)
@@ -192,12 +200,28 @@ class Walker:
         values = self.values
         for guard, coins in self.gates.get(level, ()):
             for coin in coins:
-                if coin not in values:
-                    first, turned = self.coins[coin]
-                    values[coin] = self.decided.get(coin, self.flip(first) ^ turned)
+                self._toss(coin)
             if not compiled(guard)(values):
                 return False
         return True
+
+    def _toss(self, coin: Symbol) -> None:
+        """The outcome of a test on data: an even chance; of tests against several constants one at the most holds."""
+        if coin in self.values:
+            return
+        if coin in self.decided:
+            self.values[coin] = self.decided[coin]
+            return
+        subject, constant = _compared(coin)
+        choices = self.constants.get(subject, ()) if subject is not None else ()
+        if subject is None or len(choices) < 2:
+            first, turned = self.coins[coin]
+            self.values[coin] = self.flip(first) ^ turned
+            return
+        if subject not in self.picks:
+            drawn = self._mixed(coin) % (len(choices) + 1)
+            self.picks[subject] = choices[drawn] if drawn < len(choices) else None
+        self.values[coin] = int((self.picks[subject] == constant) == (coin.name == "eq"))
 
     def _trips(self, loop: LoopInstance) -> int:
         if loop.number in self.trips_of:
@@ -232,6 +256,9 @@ class Walker:
         for coin, loops in self.coin_loops.items():
             if loop.number in loops:
                 values.pop(coin, None)
+                subject, _ = _compared(coin)
+                if subject is not None:
+                    self.picks.pop(subject, None)
 
     def flip(self, symbol: Symbol) -> int:
         """An even chance, the same for the same iteration."""
@@ -299,14 +326,49 @@ def _gates(access: Access, guards: Sequence[Form]) -> dict[int, list[tuple[Form,
     """The conditions, with the tests on data in them (and their opposites), by the position of the innermost loop that
     can change them."""
     position = {loop.number: at for at, loop in enumerate(access.loops)}
+    carrying = max((at for at, loop in enumerate(access.loops) if loop.outcomes), default=-1)
     found: dict[int, list[tuple[Form, list[Symbol]]]] = {}
     for guard in guards:
         turned = {loop for symbol in guard.leaves() for loop in redrawn_in(symbol)}
         level = max((position[loop] for loop in turned if loop in position), default=-1)
+        level = max(level, carrying)  # what a loop leaves behind must be computed even where the access does not run
         sides = {side for test in _comparisons(guard) for side, _ in _sides(test)} if _by_data(guard) else ()
         tests = sorted(sides, key=lambda symbol: symbol.number)
         found.setdefault(level, []).append((guard, tests))
     return found
+
+
+def _age(symbol: Symbol) -> int:
+    return symbol.number
+
+
+def _deciding(form: Form) -> set[Symbol]:
+    """The tests on data by which the form chooses between values."""
+    found: set[Symbol] = set()
+    for symbol in form.symbols():
+        for at, operand in enumerate(symbol.operands):
+            if symbol.name == "select" and at == 0:
+                found |= _comparisons(operand) if _by_data(operand) else set()
+            else:
+                found |= _deciding(operand)
+    return found
+
+
+def _compared(test: Symbol) -> tuple[Form | None, int | None]:
+    """``x`` and 3 of the tests ``x == 3`` and ``x != 3``."""
+    if test.kind == "operation" and test.name in ("eq", "ne") and test.operands[1].known is not None:
+        return test.operands[0], test.operands[1].known
+    return None, None
+
+
+def _constants(coins: Iterable[Symbol]) -> dict[Form, list[int]]:
+    """The constants that each value is compared with."""
+    found: dict[Form, set[int]] = {}
+    for coin in coins:
+        subject, constant = _compared(coin)
+        if subject is not None and constant is not None:
+            found.setdefault(subject, set()).add(constant)
+    return {subject: sorted(constants) for subject, constants in found.items()}
 
 
 def _decide(condition: Form, wanted: bool, decided: dict[Symbol, int]) -> None:

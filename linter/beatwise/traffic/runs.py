@@ -11,6 +11,7 @@ from dataclasses import replace
 from math import gcd, prod
 
 from beatwise.model.access import Access, LoopInstance, Recurrence
+from beatwise.model.counting import only_counts
 from beatwise.model.form import COUNT, Form, Symbol, number, redrawn_in, symbol_form
 from beatwise.model.operations import both
 from beatwise.model.traffic import Basis, Pattern, Walk
@@ -314,7 +315,7 @@ def _by_walking(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, i
     walker = Walker(access, sizes, fixed, rows)
     seen = walker.walk()
     let_in = (
-        Walker(access, sizes, fixed, rows, let_in=True).walk() if walker.drawn and not _own_counter(access) else seen
+        Walker(access, sizes, fixed, rows, let_in=True).walk() if walker.drawn else seen
     )
     basis = worst([t.basis for t in trips])
     if any(_ends_by_itself(t.loop) for t in trips):
@@ -322,13 +323,15 @@ def _by_walking(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, i
         if any(not is_given(symbol) for symbol in sizes):
             basis = "assumed"
     indirect = _indirect(access, trips)
-    if _guarded(access, trips):
+    if _guarded(access, trips) or walker.coins:
         basis = "data"
     mean = seen.mean_run
     if not seen.executions and not (seen.whole or let_in.executions):
         return Walk("unresolved", None, None, basis, None, f"it does not run in the first {STEPS_AT_MOST} iterations")
-    if not seen.executions:
+    if not let_in.executions:
         return Walk("single", None, None, basis, 0.0)
+    if not seen.executions:  # data lets it run too seldom to be drawn
+        mean = 1.0
     executions = float(let_in.executions) if let_in.whole else _product(trips)
     if seen.executions == 1 and seen.whole:
         return Walk("single", None, 1.0, basis, 1.0)
@@ -485,23 +488,13 @@ def _values_in(form: Form, access: Access, seen: set[Symbol]) -> set[Symbol]:
         elif symbol in carried:
             seen.add(symbol)
             step = carried[symbol].next
-            inside = _values_in(step, access, seen) | _values_in(carried[symbol].first, access, seen)
-            found |= {leaf for leaf in inside if leaf.reason != COUNT}
-            if not _only_steps(step, symbol):
+            found |= _values_in(carried[symbol].first, access, seen)
+            if not only_counts(step, symbol):
+                found |= _values_in(step, access, seen)
                 found |= {leaf for leaf in step.leaves() - carried.keys() - outcomes.keys() if leaf.reason != COUNT}
         else:
             found.add(symbol)
     return found
-
-
-def _only_steps(next_: Form, symbol: Symbol) -> bool:
-    """Whether a carried value moves by a step of its own, or starts anew, on every branch (bisection does neither)."""
-    if len(next_.terms) == 1:
-        (only,) = next_.symbols() or (symbol,)
-        if only.kind == "operation" and only.name == "select":
-            return all(_only_steps(arm, symbol) for arm in only.operands[1:])
-    step = next_ - symbol_form(symbol)
-    return any(not any(s.kind in ("carried", "data") for s in form.leaves()) for form in (step, next_))
 
 
 # ----------------------------------------------------------------------------------------------------- steered
