@@ -6,7 +6,7 @@ from beatwise.model.form import COUNT, Form, Symbol, symbol_form
 
 
 def only_counts(step: Form, symbol: Symbol) -> bool:
-    """Whether what ``symbol`` becomes is itself plus a number or a count, or a number to start from anew, on every branch.
+    """Whether ``symbol`` becomes itself plus a number or a count, or a number to start from anew, on every branch.
 
     Data may decide which branch it is: ``if (x > limit) out[n++] = x`` still fills ``out`` in order.
     """
@@ -20,7 +20,7 @@ def only_counts(step: Form, symbol: Symbol) -> bool:
 
 
 def _leads_on(part: Symbol, symbol: Symbol) -> bool:
-    """Whether a term of the step is no data: a count (also of the same variable in an inner loop), a counter, a size."""
+    """Whether a term of the step is no data: a count (of the same variable in an inner loop, too), a counter, a size."""
     if part == symbol:
         return False
     if part.kind == "operation":

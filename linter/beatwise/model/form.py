@@ -254,8 +254,8 @@ def opaque(reason: str, sources: Iterable[Form]) -> Symbol:
 
 
 def _told_apart(leaves: Iterable[Symbol]) -> list[Symbol]:
-    """The leaves without those that say nothing more: opaque ones (what they depend on is among the leaves, too), and of
-    the data that changes in the same loops all but the oldest."""
+    """The leaves without those that say nothing more: opaque ones (what they depend on is among the leaves), and of the
+    data that changes in the same loops all but the oldest."""
     found = {leaf for leaf in leaves if not (leaf.name == "~" and leaf.depends)}
     if len(found) <= DEPENDS_AT_MOST:
         return list(found)

@@ -23,7 +23,7 @@ from beatwise.model.form import (
     unknown,
 )
 from beatwise.model.kernel import Directive, Expression, Loop
-from beatwise.model.operations import floordiv, minimum, mod, negation
+from beatwise.model.operations import floordiv, minimum, mod, negation, select
 from beatwise.model.substitution import substitute
 from beatwise.model.types import ArrayType, IntType, PointerType, RealType, Type
 from beatwise.trace.calls import Caller
@@ -99,15 +99,26 @@ def distance(before: Spot, after: Spot) -> Form | None:
     """How far ``after`` lies behind ``before``, when both are in the same argument or array."""
     match before, after:
         case MemorySpot(), MemorySpot() if before.argument == after.argument:
-            return after.offset - before.offset
+            return less_in_each_branch(after.offset, before.offset)
         case LocalSpot(path=(*head, Form() as a)), LocalSpot(path=(*rest, Form() as b)):
-            return b - a if before.root == after.root and head == rest else None
+            return less_in_each_branch(b, a) if before.root == after.root and head == rest else None
         case LocalSpot(), LocalSpot():
             return ZERO if before == after else None
         case ChoiceSpot(), ChoiceSpot() if len(before.arms) == len(after.arms):
             steps = {distance(a, b) for (_, a), (_, b) in zip(before.arms, after.arms, strict=True)}
             return steps.pop() if len(steps) == 1 else None
     return None
+
+
+def less_in_each_branch(value: Form, by: Form) -> Form:
+    """``value - by``; of a choice, each branch less ``by``, so that what a branch adds is seen."""
+    symbols = value.symbols()
+    if len(value.terms) == 1 and len(symbols) == 1:
+        (symbol,) = symbols
+        if symbol.name == "select" and symbol.kind == "operation" and value == symbol_form(symbol):
+            condition, yes, no = symbol.operands
+            return select(condition, less_in_each_branch(yes, by), less_in_each_branch(no, by))
+    return value - by
 
 
 class Looper(Caller):

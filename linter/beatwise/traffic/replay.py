@@ -174,8 +174,8 @@ class Walker:
             self.steps += 1
             if self.steps > STEPS_AT_MOST:
                 raise Enough
-            for coin, loops in self.coin_loops.items():
-                if loop.number in loops:
+            for coin, turning in self.coin_loops.items():
+                if loop.number in turning:
                     self._toss(coin)
             if self._open(level):
                 if innermost:

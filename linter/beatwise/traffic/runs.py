@@ -314,9 +314,7 @@ def _by_walking(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, i
     }  # fmt: skip
     walker = Walker(access, sizes, fixed, rows)
     seen = walker.walk()
-    let_in = (
-        Walker(access, sizes, fixed, rows, let_in=True).walk() if walker.drawn else seen
-    )
+    let_in = Walker(access, sizes, fixed, rows, let_in=True).walk() if walker.drawn else seen
     basis = worst([t.basis for t in trips])
     if any(_ends_by_itself(t.loop) for t in trips):
         basis = worst([t.basis for t in trips if not _ends_by_itself(t.loop)])
@@ -326,16 +324,21 @@ def _by_walking(access: Access, trips: Sequence[Trips], sizes: Mapping[Symbol, i
     if _guarded(access, trips) or walker.coins:
         basis = "data"
     mean = seen.mean_run
+    if let_in.executions < seen.executions:  # letting it in keeps it out later (a state that it sets itself)
+        let_in = seen
     if not seen.executions and not (seen.whole or let_in.executions):
         return Walk("unresolved", None, None, basis, None, f"it does not run in the first {STEPS_AT_MOST} iterations")
     if not let_in.executions:
         return Walk("single", None, None, basis, 0.0)
     if not seen.executions:  # data lets it run too seldom to be drawn
         mean = 1.0
-    executions = float(let_in.executions) if let_in.whole else _product(trips)
-    if seen.executions == 1 and seen.whole:
+    counted = let_in if _guarded(access, trips) else seen
+    executions = float(counted.executions) if counted.whole else _product(trips)
+    if let_in.executions == 1 and let_in.whole:
         return Walk("single", None, 1.0, basis, 1.0)
     pattern, step = _seen_pattern(let_in.inner_steps or let_in.steps, access.element_bytes)
+    if pattern == "strided" and _own_counter(access) and walker.coins:
+        pattern, step = "irregular", None  # data decides how far it moves
     mean = 1.0 if pattern == "repeated" else mean
     if seen.inner_steps and mean is not None and mean >= 1.5 and pattern not in ("sequential",):
         pattern, step = _seen_pattern(let_in.steps, access.element_bytes)

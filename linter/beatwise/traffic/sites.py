@@ -7,7 +7,8 @@ from collections.abc import Hashable, Mapping, Sequence
 from dataclasses import dataclass
 
 from beatwise.model.access import Access, Guard
-from beatwise.model.form import Form
+from beatwise.model.counting import only_counts
+from beatwise.model.form import Form, Symbol, symbol_form
 from beatwise.model.operations import negation
 from beatwise.traffic.motion import moving_loop
 
@@ -162,8 +163,25 @@ def _chains(slots: Sequence[float]) -> dict[float, list[float]]:
 def _step(access: Access) -> int | None:
     """Bytes by which the loop that moves the access moves it, where that is constant."""
     loop = moving_loop(access)
-    step = access.offset.coefficient(loop.counter) if loop is not None else None
-    return step.known if step is not None else None
+    if loop is None:
+        return None
+    step = access.offset.coefficient(loop.counter)
+    if step is not None and step.known:
+        return step.known
+    carried = [r for r in loop.recurrences if r.symbol in access.offset.symbols()]
+    if len(carried) != 1 or not only_counts(carried[0].next, carried[0].symbol):
+        return None
+    factor = access.offset.coefficient(carried[0].symbol)
+    moved = _moves(carried[0].next, carried[0].symbol)
+    return factor.known * moved.pop() if factor is not None and factor.known and len(moved) == 1 else None
+
+
+def _moves(step: Form, symbol: Symbol) -> set[int]:
+    """By how much a counter moves on the branches on which it does by a plain number."""
+    if step.symbols() and (only := next(iter(step.symbols()))).name == "select" and step == symbol_form(only):
+        return {move for arm in only.operands[1:] for move in _moves(arm, symbol)}
+    move = (step - symbol_form(symbol)).known
+    return {move} if move else set()
 
 
 def _merged(found: list[tuple[Conditions, frozenset[int]]]) -> list[tuple[Conditions, frozenset[int]]]:
