@@ -20,7 +20,7 @@ def only_counts(step: Form, symbol: Symbol) -> bool:
 
 
 def _leads_on(part: Symbol, symbol: Symbol) -> bool:
-    """Whether a term of the step is no data: a count (of the same variable in an inner loop, too), a counter, a size."""
+    """Whether a term of the step is no data: a count (also of the variable in an inner loop), a counter, a size."""
     if part == symbol:
         return False
     if part.kind == "operation":
