@@ -182,7 +182,7 @@ def test_destinations_that_data_picks_are_steered() -> None:
         int *to[4] = {a, b, out, spare};
         for (int i = 0; i < 64; ++i) to[mask[i]][i] = 1;
     """, parameters="const int *mask, int *a, int *b, int *out, int *spare")  # fmt: skip
-    assert found.splitlines()[1:] == [f"write {name} steered run 1.33333 data x64" for name in "a b out spare".split()]
+    assert found.splitlines()[1:] == [f"write {name} steered run 1.33333 data x16" for name in "a b out spare".split()]
 
 
 def test_a_destination_with_a_counter_of_its_own_is_filled_in_order() -> None:

@@ -45,7 +45,7 @@ def walk(access: Access, given: Mapping[str, int]) -> Walk:
         found = _measured(*_taken_to_run(access, sizes))
         found = replace(found, basis=worst([found.basis, "assumed"]))
     if access.choice is not None and _by_data(access.choice.selector):
-        return _steered(access, found)
+        return _steered(access, found, sizes)
     return found
 
 
@@ -503,7 +503,7 @@ def _values_in(form: Form, access: Access, seen: set[Symbol]) -> set[Symbol]:
 # ----------------------------------------------------------------------------------------------------- steered
 
 
-def _steered(access: Access, found: Walk) -> Walk:
+def _steered(access: Access, found: Walk, sizes: Mapping[Symbol, int]) -> Walk:
     """Data picks where it goes: between K places that are as likely, a run to one of them has K/(K-1) elements."""
     assert access.choice is not None
     places = max(2, len(access.choice.alternatives))
@@ -520,7 +520,9 @@ def _steered(access: Access, found: Walk) -> Walk:
     inner = access.loops[-1]
     if inner.kind == "copy" or not _redrawn(access.choice.selector).intersection({inner.number}):
         return Walk("steered", None, found.run_elements, found.basis, found.executions, None)
-    return Walk("steered", None, run, "data", found.executions, None)
+    plain = tuple(guard for guard in access.guards if not _by_data(guard.condition))
+    of_all = _measured(replace(access, offset=number(0), guards=plain), sizes).executions
+    return Walk("steered", None, run, "data", None if of_all is None else of_all / places, None)
 
 
 def _own_counter(access: Access) -> bool:
