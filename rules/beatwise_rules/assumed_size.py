@@ -102,5 +102,9 @@ def _evidence(loop: LoopInstance) -> str:
     if loop.why_unknown or loop.trips is None:
         why = f": {loop.why_unknown}" if loop.why_unknown else ""
         return f"How often {the_loop(loop)} runs is not known{why}."
-    hangs = [symbol.name for symbol in sorted(loop.trips.leaves(), key=lambda symbol: symbol.number) if symbol.kind in ("parameter", "data")]
+    hangs = [
+        symbol.name
+        for symbol in sorted(loop.trips.leaves(), key=lambda symbol: symbol.number)
+        if symbol.kind in ("parameter", "data")
+    ]
     return f"How often {the_loop(loop)} runs depends on {listed(hangs or [str(loop.trips)])}."

@@ -1,4 +1,4 @@
-"""What the rules ask of an access: which loop moves it, what data it depends on, which others stand at the same site."""
+"""What the rules ask of an access: which loop moves it, what data it depends on, which others stand at its site."""
 
 from __future__ import annotations
 

@@ -396,7 +396,9 @@ def test_sizes_that_were_assumed_are_told_once_with_what_would_settle_them() -> 
     rays, gates = loop("ray", 10, "rays"), loop("gate", 11, "gates")
     kernel = Kernel().clean("a", 12, [rays, gates], basis="assumed").clean("b", 13, [rays, gates], basis="assumed")
     finding = one("assumed-size", kernel)
-    assert finding.message == "`rays` and `gates` are not known: 1024 is taken, and the accesses on 2 lines depend on it."
+    assert (
+        finding.message == "`rays` and `gates` are not known: 1024 is taken, and the accesses on 2 lines depend on it."
+    )
     assert finding.because[0] == "How often the loop over `ray` (line 10) runs depends on `rays`."
     assert finding.instead == "Say what is usual: `--given rays=...` `--given gates=...`."
     assert (finding.level, finding.place.line) == ("note", 1)

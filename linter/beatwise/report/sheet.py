@@ -13,7 +13,7 @@ from beatwise.model.access import Direction, Trace
 from beatwise.model.finding import LEVELS, Finding, Level
 from beatwise.model.kernel import Problem
 from beatwise.model.place import Place
-from beatwise.model.traffic import Basis, Block, Limit, Pattern, PortTraffic, Traffic
+from beatwise.model.traffic import Basis, Block, KernelTime, Limit, Pattern, PortTraffic, Traffic
 
 
 @dataclass(frozen=True, slots=True)
@@ -65,7 +65,7 @@ class Sheet:
     accesses: tuple[AccessRow, ...]
     streams: tuple[StreamRow, ...]
     findings: tuple[Finding, ...]
-    seconds: float | None
+    time: KernelTime
 
 
 @dataclass(frozen=True, slots=True)
@@ -86,7 +86,7 @@ def sheet(
     traffic: Iterable[Traffic],
     ports: Iterable[PortTraffic],
     findings: Iterable[Finding],
-    seconds: float | None,
+    time: KernelTime,
 ) -> Sheet:
     """The sheet of one kernel, from all that was measured about it."""
     return Sheet(
@@ -98,7 +98,7 @@ def sheet(
         accesses=merged(map(_row, traffic)),
         streams=_streams(trace),
         findings=dearest_first(findings),
-        seconds=seconds,
+        time=time,
     )
 
 

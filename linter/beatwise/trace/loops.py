@@ -21,7 +21,7 @@ from beatwise.model.form import (
     symbol_form,
     unknown,
 )
-from beatwise.model.kernel import Directive, Expression, Loop
+from beatwise.model.kernel import Directive, Expression, Loop, is_independence
 from beatwise.model.operations import floordiv, minimum, mod, negation
 from beatwise.model.substitution import substitute
 from beatwise.model.types import ArrayType, IntType, PointerType, RealType, Type
@@ -554,6 +554,7 @@ class Looper(Caller):
             unroll=(unroll.number("factor") or 0) if unroll is not None and "off" not in unroll.options else None,
             flattened="loop_flatten" in directives,
             dataflow="dataflow" in directives,
+            independent=any(is_independence(directive) for directive in statement.directives),
         )
 
     def _leave(
