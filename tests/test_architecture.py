@@ -36,7 +36,7 @@ LIBRARIES = {
     "clang": "frontend",
     "tree_sitter": "source",
     "tree_sitter_cpp": "source",
-    "networkx": "streams",
+    "networkx": "memory",
     "rich": "report",
     "click": "cli",
 }

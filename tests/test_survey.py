@@ -135,3 +135,44 @@ def test_texts_are_surveyed_without_files() -> None:
         ("thinned", "sequential"),
     ]
     assert "strided-access" in {finding.rule for finding in kernel.findings}
+
+
+def test_a_size_that_is_given_turns_rates_into_seconds() -> None:
+    """4096 floats at 13.27 GB/s of one HBM2 channel."""
+    text = """
+    void load(const float *in, float *out, int n) {
+    #pragma HLS INTERFACE mode=m_axi port=in bundle=a
+    #pragma HLS INTERFACE mode=m_axi port=out bundle=b
+        for (int i = 0; i < n * 16; ++i) out[i] = in[i];
+    }
+    """
+    (unknown,) = survey_texts({"load.cpp": text})
+    assert (unknown.time.seconds, unknown.time.wanted) == (None, ("n",))
+    (known,) = survey_texts({"load.cpp": text}, given={"n": 256})
+    assert known.time.seconds == pytest.approx(4096 * 4 / 13.27e9, rel=0.01)
+    assert (known.time.wanted, known.time.basis) == ((), "given")
+
+
+@pytest.mark.parametrize(
+    ("directive", "held"),
+    [
+        ("", True),
+        ("dependence variable=bins inter false", False),
+        ("DEPENDENCE variable=bins type=inter dependent=false", False),
+        ("dependence variable=bins intra false", True),
+        ("dependence variable=bins inter true", True),
+    ],
+)
+def test_a_directive_that_denies_a_dependence_is_believed(directive: str, held: bool) -> None:
+    text = f"""
+    void count(const int *echoes, int *bins) {{
+    #pragma HLS INTERFACE mode=m_axi port=echoes bundle=a
+    #pragma HLS INTERFACE mode=m_axi port=bins bundle=b
+        for (int i = 0; i < 4096; ++i) {{
+    #pragma HLS {directive or "pipeline"}
+            bins[echoes[i]] += 1;
+        }}
+    }}
+    """
+    (kernel,) = survey_texts({"count.cpp": text})
+    assert any(item.limit == "interval" for item in kernel.traffic) is held

@@ -20,7 +20,10 @@ from beatwise import __version__
 from beatwise.errors import BadSettings, UnknownName, UserError
 
 if TYPE_CHECKING:
+    from beatwise.memory.gauge import Pattern
+    from beatwise.model.board import Board
     from beatwise.model.finding import Level
+    from beatwise.report.gauge import Answer, Question
     from beatwise.report.sheet import Survey
     from beatwise.settings import Settings
 
@@ -206,7 +209,101 @@ def why(rule: str | None) -> int:
     return DONE
 
 
+def _run(context: click.Context, option: click.Parameter, text: str | None) -> int | str | None:
+    """Bytes, or ``sequential``; nothing where the pattern decides."""
+    if text is None or text == "sequential":
+        return text
+    if not re.fullmatch(r"[0-9]{1,15}", text) or int(text) < 1:
+        raise click.BadParameter(f"{text!r}: expected a number of bytes, at least 1, or sequential", context, option)
+    return int(text)
+
+
+COUNT = click.IntRange(min=1, max=10**15)
+
+
+@commands.command(epilog=EPILOG, short_help="What a pattern gets on a board, without source.")
+@click.option("--board", metavar="NAME|FILE", default="hbm2-32ch", help=HELP["board"])
+@click.option("--direction", type=click.Choice(["read", "write", "mixed"]), default="read")
+@click.option("--run", metavar="BYTES|sequential", callback=_run, help="Consecutive bytes; sequential: without end.")
+@click.option("--stride", metavar="BYTES", type=COUNT, help="From the start of a run to the next; else random.")
+@click.option("--random", is_flag=True, help="Random places; also what --run means without --stride.")
+@click.option("--width", metavar="BITS", type=COUNT, help="Of the port; else the widest that pays on the board.")
+@click.option("--burst", metavar="BEATS", type=click.IntRange(1, 256), help="Longest transaction; else the board's.")
+@click.option("--outstanding", metavar="N", type=COUNT, help="Transactions at a time; else the board's.")
+@click.option("--channels", metavar="K", type=COUNT, default=1, help="Channels that the port reaches at random.")
+@click.option("--ports", metavar="P", type=COUNT, default=1, help="Ports that share the channel; the rate is of one.")
+@click.option("--clock", metavar="MHZ", type=click.FloatRange(min=0, min_open=True), help="Of the kernel.")
+@click.option("--sweep", metavar="NAME=FIRST:LAST", help="Double one number, as in run=32:65536; text is a chart.")
+@_option("as", None, "form", type=FORMS, default="text")
+@_option("to", "FILE", type=OUTPUT)
+def gauge(board: str, form: str, to: Path | None, sweep: str | None, run: int | str | None, **numbers: Any) -> int:
+    """What a pattern gets on a board, without source, and which limit holds it.
+
+    Without --run the traffic is sequential; with --stride or --random, one granule at each place. GB/s are 10^9 useful
+    bytes a second of one port; mixed: its reads and writes together. Exit status: 0 done, 2 it could not be done.
+    """
+    from beatwise.memory import boards
+    from beatwise.memory import gauge as patterns
+    from beatwise.report import gauge as report
+    from beatwise.report.output import columns
+    from beatwise.report.terminal import capable
+
+    profile = boards.board(board)
+    if run == "sequential" and (numbers["stride"] is not None or numbers["random"]):
+        raise BadSettings("run: sequential traffic has no stride and no random places")
+    pattern = patterns.Pattern(run=run if isinstance(run, int) else None, **numbers)
+    if run == "sequential":
+        pattern = replace(pattern, channels=1)
+    if sweep is None:
+        text = report.gauge_text if form == "text" else report.gauge_json
+        _deliver(text(_question(profile, pattern), _answer(profile, pattern)), to)
+        return DONE
+    name, first, last = patterns.sweep_range(sweep)
+    points = [(value, _answer(profile, each)) for value, each in patterns.sweep(pattern, name, first, last)]
+    question = _question(profile, patterns.numbered(pattern, name, first), swept=name)
+    if form == "json":
+        _deliver(report.sweep_json(question, name, points), to)
+        return DONE
+    ascii_only = capable(sys.stdout)[1] if to is None else False
+    chart = report.sweep_text(question, name, points, width=columns(sys.stdout), ascii_only=ascii_only)
+    _deliver(chart, to)
+    return DONE
+
+
+@commands.command(short_help="The memory profiles, and one in detail.")
+@click.argument("name", required=False, metavar="[NAME|FILE]")
+def boards(name: str | None) -> int:
+    """The memory profiles; with NAME or FILE every fact of one, with its source."""
+    from beatwise.memory import board, board_names
+    from beatwise.report.boards import board_text, boards_text
+    from beatwise.report.output import columns, deliver
+
+    if name is None:
+        deliver(boards_text(board(each) for each in board_names()))
+    else:
+        deliver(board_text(board(name), columns(sys.stdout)))
+    return DONE
+
+
 # --------------------------------------------------------------------------------------------------------- steps
+
+
+def _answer(board: Board, pattern: Pattern) -> Answer:
+    from beatwise.memory.gauge import demand
+    from beatwise.memory.price import price
+    from beatwise.report.gauge import Answer
+
+    answer = price(board, demand(board, pattern))
+    return Answer(
+        answer.gbps, answer.limit, {str(name): gbps for name, gbps in answer.limits.items()}, answer.share_of_peak
+    )
+
+
+def _question(board: Board, pattern: Pattern, swept: str | None = None) -> Question:
+    from beatwise.memory.gauge import words
+    from beatwise.report.gauge import Question
+
+    return Question(board.name, board.peak_gbps, words(board, pattern, swept))
 
 
 def _settings(paths: Sequence[Path], settings: Path | None, **options: Any) -> Settings:

@@ -13,7 +13,7 @@ from beatwise.model.access import Trace
 from beatwise.model.board import Board
 from beatwise.model.finding import Facts, Finding
 from beatwise.model.kernel import Directive, Problem, Program
-from beatwise.model.traffic import PortTraffic, Traffic
+from beatwise.model.traffic import KernelTime, PortTraffic, Traffic
 from beatwise.report.sheet import Sheet, Survey, sheet
 from beatwise.settings import Settings
 from beatwise.workers import Done, Limits, each
@@ -30,7 +30,7 @@ class KernelSurvey:
     traffic: tuple[Traffic, ...]
     ports: tuple[PortTraffic, ...]
     findings: tuple[Finding, ...]
-    seconds: float | None = None
+    time: KernelTime
 
 
 @dataclass(frozen=True, slots=True)
@@ -134,7 +134,7 @@ def analyse(task: Task) -> Outcome:
     findings = [finding for kernel in kernels for finding in kernel.findings]
     return Outcome(
         sheets=tuple(
-            sheet(each.trace, each.traffic, each.ports, accepted(each.findings, acceptances), each.seconds)
+            sheet(each.trace, each.traffic, each.ports, accepted(each.findings, acceptances), each.time)
             for each in kernels
         ),
         problems=tuple(dict.fromkeys([*unread, *told])),  # what an error in the text entails is not told beside it
@@ -157,6 +157,7 @@ def _program(task: Task, top: str | None) -> tuple[Program, tuple[KernelSurvey, 
 def _kernels(program: Program, board: Board, settings: Settings) -> tuple[KernelSurvey, ...]:
     from beatwise.trace import trace_program
     from beatwise.traffic.rates import measure
+    from beatwise.traffic.time import kernel_time
     from beatwise_rules import Thresholds, ask
 
     limits = settings.limits
@@ -164,9 +165,10 @@ def _kernels(program: Program, board: Board, settings: Settings) -> tuple[Kernel
     found = []
     for trace in trace_program(program, settings.given):
         measured = measure(trace, board, settings.given)
-        facts = Facts(trace, board, measured.traffic, measured.ports, settings.given)
+        time = kernel_time(trace, measured.traffic, board, settings.given)
+        facts = Facts(trace, board, measured.traffic, measured.ports, settings.given, time)
         findings = ask(facts, thresholds=thresholds, levels=settings.levels)
-        found.append(KernelSurvey(trace, measured.traffic, measured.ports, findings))
+        found.append(KernelSurvey(trace, measured.traffic, measured.ports, findings, time))
     return tuple(found)
 
 

@@ -18,10 +18,13 @@ said until this is settled, or curing it cures what stands later.
 11  interleaved-accesses        accesses of one direction take turns    a longer run is of no use before
 12  short-run                   the order is good, the stretch short
 13  partial-record              the burst is good, a part of it unused
-14  narrow-port                 the burst is good, its beats narrow     last: width multiplies what order has won
+14  narrow-port                 the burst is good, its beats narrow     width multiplies what order has won
+15  misaligned-run              all is good but where the runs start    a port that is narrow in any case says more
+16  few-outstanding             all is good but how many are under way  last: how many follows from all the rest
 ==  ==========================  ======================================  ==========================================
 
-Three rules speak of the kernel, and beside the others: `shared-port` (what arguments take from each other),
+Five rules speak of the kernel, and beside the others: `shared-port` (what arguments take from each other),
+`read-write-turnaround` (what reads and writes do), `oversized-buffers` (what room on chip a port has no use for),
 `assumed-size` and `invented-name` (what the rest depends on).
 """
 

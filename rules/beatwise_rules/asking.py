@@ -15,13 +15,17 @@ from beatwise_rules import (
     data_dependent_destination,
     descending_access,
     early_exit,
+    few_outstanding,
     guarded_access,
     in_place_update,
     indirect_index,
     interleaved_accesses,
     invented_name,
+    misaligned_run,
     narrow_port,
+    oversized_buffers,
     partial_record,
+    read_write_turnaround,
     repeated_address,
     shared_port,
     short_run,
@@ -68,10 +72,14 @@ BY_CAUSE = tuple(
             short_run,
             partial_record,
             narrow_port,
+            misaligned_run,
+            few_outstanding,
         ),
     )
 )  #: rules about an access, the cause that must go first before the others
-OF_THE_KERNEL = tuple(map(_rule, (shared_port, assumed_size, invented_name)))  #: told beside the others
+OF_THE_KERNEL = tuple(
+    map(_rule, (shared_port, read_write_turnaround, oversized_buffers, assumed_size, invented_name))
+)  #: told beside the others
 RULES = BY_CAUSE + OF_THE_KERNEL
 
 TOLD_ELSEWHERE: Mapping[Block, str] = {
@@ -102,7 +110,7 @@ def ask(
     """
     wanted = levels or {}
     told = [*_joined(_by_cause(facts)), *_of_the_kernel(facts)]
-    told = [_quieter(finding, told) for finding in weighed(told, facts, thresholds)]
+    told = [_quieter(finding, told, facts) for finding in weighed(told, facts, thresholds)]
     told = [
         replace(finding, level=setting)
         if (setting := wanted.get(finding.rule)) is not None and setting != "off"
@@ -165,10 +173,11 @@ def _of_the_kernel(facts: Facts) -> Iterator[Finding]:
         yield from rule.find(facts)
 
 
-def _quieter(finding: Finding, told: Iterable[Finding]) -> Finding:
-    """A shared port as a note where its accesses' taking turns is told already: the loss is the same one."""
-    if finding.rule == "shared-port" and any(
-        other.rule == "interleaved-accesses" and other.interface == finding.interface for other in told
-    ):
+def _quieter(finding: Finding, told: Iterable[Finding], facts: Facts) -> Finding:
+    """A note where the same loss is told already: a shared port whose accesses take turns, or whose channel turns
+    around; and where the board has one channel, so that reads and writes have nowhere else to go."""
+    before = {"shared-port": "interleaved-accesses", "read-write-turnaround": "shared-port"}.get(finding.rule)
+    told_already = any(other.rule == before and other.interface == finding.interface for other in told)
+    if told_already or (finding.rule == "read-write-turnaround" and facts.board.channels == 1):
         return replace(finding, level="note")
     return finding

@@ -146,7 +146,17 @@ def _alone(facts: Facts, traffic: Traffic, group: Sequence[Traffic]) -> float:
         len(group) / sum(other.access.argument == access.argument for other in group) if board.channels > 1 else 1.0
     )
     best = board.read_cap_gbps if access.direction == "read" else board.write_cap_gbps
-    bounds = [rate * (on_channel if limit == "channel" else on_port) for limit, rate in traffic.limits.items()]
+    ways = {other.access.direction for other in group if other.access.argument == access.argument}
+    gone = (
+        {"shared", "turnaround"}
+        if board.channels > 1 and len(ways) == 1
+        else {"shared"}
+        if board.channels > 1
+        else set()
+    )
+    factors = {"port": 1.0, "channel": 1.0 if "shared" in traffic.limits else on_channel, "shared": 1.0}
+    factors |= {"rows": on_channel, "turnaround": on_channel, "switch": on_channel}
+    bounds = [rate * factors.get(limit, on_port) for limit, rate in traffic.limits.items() if limit not in gone]
     return max(traffic.now_gbps, min([best, *bounds])) if bounds else traffic.now_gbps
 
 

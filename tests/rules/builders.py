@@ -14,6 +14,7 @@ from beatwise.model.form import Form, counter, data, number, operation, paramete
 from beatwise.model.kernel import Invention
 from beatwise.model.place import Place
 from beatwise.model.traffic import Basis, Block, Limit, Pattern, PortTraffic, Traffic, Walk
+from beatwise.traffic.time import kernel_time
 
 BOARD = Board(
     name="hbm2-32ch",
@@ -172,4 +173,5 @@ class Kernel:
             tuple(self.inventions), (),
         )  # fmt: skip
         totals = tuple(PortTraffic(port.name, port.arguments, 512, (0,), 1.0, 13.27) for port in ports)
-        return Facts(trace, board, tuple(self.traffic), totals, given or {})
+        time = kernel_time(trace, self.traffic, board, given or {})
+        return Facts(trace, board, tuple(self.traffic), totals, given or {}, time)

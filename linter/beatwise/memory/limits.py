@@ -63,3 +63,42 @@ def refreshed(peak_gbps: float, refresh_ns: float, refresh_interval_ns: float) -
     (13.44, 18.34)
     """
     return peak_gbps * (1 - refresh_ns / refresh_interval_ns)
+
+
+def writes_in_flight(
+    burst_beats: float, beat_bytes: int, mhz: float, *, outstanding: int, latency_ns: float, gap_beats: float
+) -> float:
+    """Writes with few outstanding: a port that serves bursts in L + gap cycles, each answered ``latency_ns`` later.
+
+    Mean value analysis of a closed network of one queue and one delay (Reiser, Lavenberg, J. ACM 27(2), 1980; from
+    memory). Tends to `gaps` for many outstanding, to Little's law for few.
+
+    >>> round(writes_in_flight(16, 64, 300, outstanding=1000, latency_ns=140, gap_beats=4), 2)
+    15.36
+    """
+    serve, think, waiting, rate = burst_beats + gap_beats, latency_ns * mhz / 1000, 0.0, 0.0
+    for number in range(1, min(outstanding, 512) + 1):
+        answer = serve * (1 + waiting)
+        rate = number / (think + answer)
+        waiting = rate * answer
+    return rate * burst_beats * port(beat_bytes, mhz)
+
+
+def order(run_bytes: float, channels: int, gbps: float, *, turn_ns: float) -> float:
+    """One port over K channels, at random: it waits ``turn_ns`` whenever the channel changes, 1 - 1/K of the times.
+
+    Answers of one AXI identity come in order (ARM IHI 0022), so that transactions to different channels do not overlap.
+
+    >>> round(order(256, 2, 13.27, turn_ns=150), 2), round(order(256, 1, 13.27, turn_ns=150), 2)
+    (2.71, 13.27)
+    """
+    return run_bytes / (run_bytes / gbps + (1 - 1 / channels) * turn_ns)
+
+
+def interval(used_bytes: float, mhz: float, interval_cycles: float) -> float:
+    """One beat's useful bytes in every ``interval_cycles`` cycles.
+
+    >>> interval(64, 300, 4)
+    4.8
+    """
+    return used_bytes * mhz / 1000 / interval_cycles

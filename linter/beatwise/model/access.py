@@ -58,6 +58,7 @@ class LoopInstance:
     unroll: int | None = None  #: 0: in full
     flattened: bool = False
     dataflow: bool = False
+    independent: bool = False  #: a directive says that no iteration needs what another has stored
 
 
 @dataclass(frozen=True, slots=True)

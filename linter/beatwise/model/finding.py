@@ -9,7 +9,7 @@ from typing import Literal
 from beatwise.model.access import Trace
 from beatwise.model.board import Board
 from beatwise.model.place import Place
-from beatwise.model.traffic import PortTraffic, Traffic
+from beatwise.model.traffic import KernelTime, PortTraffic, Traffic
 
 Level = Literal["error", "warning", "note"]
 LEVELS: tuple[Level, ...] = ("error", "warning", "note")  #: the gravest first
@@ -24,6 +24,7 @@ class Facts:
     traffic: tuple[Traffic, ...]
     ports: tuple[PortTraffic, ...]
     given: Mapping[str, int]
+    time: KernelTime | None = None
 
 
 @dataclass(frozen=True, slots=True)

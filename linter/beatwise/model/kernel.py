@@ -41,6 +41,12 @@ class Directive:
             return None
 
 
+def is_independence(directive: Directive) -> bool:
+    """Whether it says that a dependence between iterations is only apparent."""
+    said = "false" in directive.options or directive.options.get("dependent", "").lower() == "false"
+    return directive.kind == "dependence" and said and directive.options.get("type", "inter").lower() != "intra"
+
+
 # --------------------------------------------------------------------------------------------------- expressions
 
 

@@ -39,6 +39,18 @@ def amount(value: float | None) -> str:
     return f"{value:.3g}"
 
 
+def volume(size: float) -> str:
+    """Bytes in decimal units, as they go with GB/s.
+
+    >>> [volume(value) for value in (64, 20480, 12.8e6, 4.2e9)]
+    ['64 B', '20.5 kB', '12.8 MB', '4.2 GB']
+    """
+    for factor, unit in ((1e9, "GB"), (1e6, "MB"), (1e3, "kB")):
+        if size >= factor:
+            return f"{size / factor:.3g} {unit}"
+    return f"{size:.0f} B"
+
+
 def signed(figure: str, sign: float = -1) -> str:
     """The figure with its sign; 0 has none.
 

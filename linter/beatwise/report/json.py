@@ -8,7 +8,7 @@ from typing import Any
 
 from beatwise import __version__
 from beatwise.model.finding import Finding
-from beatwise.model.traffic import PortTraffic
+from beatwise.model.traffic import KernelTime, LoopTime, PortTraffic
 from beatwise.report.sheet import AccessRow, Sheet, StreamRow, Survey
 
 FORMAT = "beatwise-audit-1"
@@ -53,7 +53,35 @@ def _kernel(sheet: Sheet) -> dict[str, Any]:
         "interfaces": [_interface(port, port.interface not in sheet.undeclared) for port in sheet.interfaces],
         "accesses": [_access(row) for row in sheet.accesses],
         "streams": [_stream(row) for row in sheet.streams],
-        "seconds": rounded(sheet.seconds),
+        "seconds": rounded(sheet.time.seconds),
+        "loops": [_loop(loop) for loop in sheet.time.loops],
+        "budget": _budget(sheet.time),
+    }
+
+
+def _loop(loop: LoopTime) -> dict[str, Any]:
+    return {
+        "file": loop.place.file,
+        "line": loop.place.line,
+        "label": loop.name,
+        "process": None if loop.process is None else loop.process[0],
+        "bytes": rounded(loop.bytes_moved) if loop.known else None,
+        "seconds": rounded(loop.seconds()) if loop.known else None,
+        "could_seconds": rounded(loop.could_seconds) if loop.known else None,
+    }
+
+
+def _budget(time: KernelTime) -> dict[str, Any]:
+    return {
+        "bytes": rounded(time.bytes_moved) if time.known else None,
+        "now_gbps": rounded(time.gbps),
+        "could_gbps": rounded(time.could_gbps),
+        "peak_gbps": rounded(time.peak_gbps),
+        "share_of_peak": rounded(time.gbps / time.peak_gbps),
+        "could_seconds": rounded(time.could_total) if time.known else None,
+        "basis": time.basis,
+        "wanted": list(time.wanted),
+        "unsized_lines": list(time.unsized),
     }
 
 
@@ -125,4 +153,5 @@ def _finding(finding: Finding) -> dict[str, Any]:
         "loss_gbps": rounded(finding.loss_gbps),
         "edit": finding.edit,
         "accepted": finding.accepted,
+        "seconds_saved": rounded(finding.seconds_saved),
     }

@@ -14,7 +14,7 @@ from beatwise.model.finding import LEVELS, Finding, Level
 from beatwise.model.form import redrawn_in
 from beatwise.model.kernel import Problem
 from beatwise.model.place import Place
-from beatwise.model.traffic import Basis, Block, Limit, Pattern, PortTraffic, Traffic
+from beatwise.model.traffic import Basis, Block, KernelTime, Limit, Pattern, PortTraffic, Traffic
 
 
 @dataclass(frozen=True, slots=True)
@@ -66,7 +66,7 @@ class Sheet:
     accesses: tuple[AccessRow, ...]
     streams: tuple[StreamRow, ...]
     findings: tuple[Finding, ...]
-    seconds: float | None
+    time: KernelTime
 
 
 @dataclass(frozen=True, slots=True)
@@ -87,7 +87,7 @@ def sheet(
     traffic: Iterable[Traffic],
     ports: Iterable[PortTraffic],
     findings: Iterable[Finding],
-    seconds: float | None,
+    time: KernelTime,
 ) -> Sheet:
     """The sheet of one kernel, from all that was measured about it."""
     return Sheet(
@@ -99,7 +99,7 @@ def sheet(
         accesses=merged(map(_row, traffic)),
         streams=_streams(trace),
         findings=dearest_first(findings),
-        seconds=seconds,
+        time=time,
     )
 
 

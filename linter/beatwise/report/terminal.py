@@ -19,6 +19,7 @@ from rich.text import Text
 from beatwise.model.finding import Finding, Level
 from beatwise.model.kernel import Problem
 from beatwise.model.traffic import PortTraffic
+from beatwise.report.budget import budget_lines, loop_rows
 from beatwise.report.escape import printable
 from beatwise.report.figures import amount, loss, plural, rate, signed, time
 from beatwise.report.sheet import AccessRow, Sheet, StreamRow, Survey, at_or_above, grouped
@@ -37,8 +38,10 @@ def audit_text(
     for sheet in survey.kernels:
         _head(page, sheet, survey.board)
         _ports(page, sheet)
+        _budget(page, sheet)
         _costs(page, sheet.findings)
         _accesses(page, sheet.accesses)
+        _loops(page, sheet)
         _streams(page, sheet.streams)
     if problems and survey.problems:
         page.rule("not done", "")
@@ -166,8 +169,6 @@ def _head(page: _Page, sheet: Sheet, board: str) -> None:
     ]
     if sheet.streams:
         words.append(plural(len(sheet.streams), "stream"))
-    if sheet.seconds is not None:
-        words.append(f"about {time(sheet.seconds)} a call")
     page.wrapped(Text(f" {page.marks['at']} ".join(map(printable, words)), style="dim"), indent=3)
     page.gap()
 
@@ -196,6 +197,33 @@ def _ports(page: _Page, sheet: Sheet) -> None:
     if sheet.undeclared:
         names_ = printable(", ".join(sheet.undeclared))
         page.wrapped(Text(f"No directive makes a port for {names_}: a port for each is taken.", style="dim"), indent=3)
+    page.gap()
+
+
+def _budget(page: _Page, sheet: Sheet) -> None:
+    """What one call moves and takes, and what it would."""
+    lines = list(budget_lines(sheet.time))
+    if lines:
+        grid = _labelled()
+        for number, line in enumerate(lines):
+            grid.add_row(_label("" if number else "budget"), Text(printable(line)))
+        page.show(grid)
+        page.gap()
+
+
+def _loops(page: _Page, sheet: Sheet) -> None:
+    """The time of each loop, where there are several and their sizes are known."""
+    rows = loop_rows(sheet.time)
+    if not rows:
+        return
+    columns: tuple[Column, ...] = (("line", True), ("loop", False), ("takes", True), ("could take", True))
+    lines = [(line, printable(name), takes, could) for line, name, takes, could in rows]
+    widths = _widths(columns, lines)
+    widths[1] = min(widths[1], max(8, page.width - 3 - sum(widths) + widths[1] - 6))
+    page.line(Text("   Loops, one call", style="bold"))
+    page.line(_table_line([name for name, _ in columns], columns, widths, "  ", "dim"))
+    for cells in lines:
+        page.line(_table_line(cells, columns, widths, "  ", ""))
     page.gap()
 
 

@@ -22,7 +22,7 @@ from beatwise.model.form import (
     symbol_form,
     unknown,
 )
-from beatwise.model.kernel import Directive, Expression, Loop
+from beatwise.model.kernel import Directive, Expression, Loop, is_independence
 from beatwise.model.operations import floordiv, minimum, mod, negation, select
 from beatwise.model.substitution import substitute
 from beatwise.model.types import ArrayType, IntType, PointerType, RealType, Type
@@ -566,6 +566,7 @@ class Looper(Caller):
             unroll=(unroll.number("factor") or 0) if unroll is not None and "off" not in unroll.options else None,
             flattened="loop_flatten" in directives,
             dataflow="dataflow" in directives,
+            independent=any(is_independence(directive) for directive in statement.directives),
         )
 
     def _leave(

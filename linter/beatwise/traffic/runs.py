@@ -101,6 +101,25 @@ def _last_of(access: Access, left: Sequence[LoopInstance], given: Mapping[str, i
     return Walk("indirect", None, 1.0, "data", executions, access.taken)
 
 
+# ------------------------------------------------------------------------------------------------------- sizes
+
+
+def size_basis(access: Access, given: Mapping[str, int]) -> Basis:
+    """Where the number of times that the access runs comes from; ``data`` where data decides it, within known loops."""
+    symbols = parameters_of(access)
+    trips = all_trips(access, {symbol: size_of(symbol, given) for symbol in symbols})
+    bases = [t.basis for t in trips if not _ends_by_itself(t.loop)]
+    if len(bases) < len(trips) and not all(map(is_given, symbols)):
+        bases.append("assumed")
+    conditions = [guard.condition for guard in access.guards]
+    told = [form for form in conditions if not _by_data(form)]
+    if any(leaf.kind == "parameter" and not is_given(leaf) for form in told for leaf in form.leaves()):
+        bases.append("assumed")
+    if any(map(_by_data, conditions)) or any(_by_data(form) for loop in access.loops for form in loop.exits):
+        bases.append("data" if "assumed" not in bases else "assumed")
+    return "assumed" if "assumed" in bases else worst(bases)
+
+
 def _by_data(form: Form) -> bool:
     return any(symbol.kind == "data" for symbol in form.leaves())
 
