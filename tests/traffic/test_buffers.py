@@ -4,10 +4,10 @@ from __future__ import annotations
 
 import pytest
 
+from beatwise.memory.onchip import blocks
 from beatwise.model.board import Board
 from beatwise.model.traffic import PortBuffer
 from beatwise.traffic import measure
-from beatwise.traffic.buffers import SHAPES, blocks
 from beatwise.traffic.demands import mean_burst
 from traffic.nests import DDR, HBM, at, loop, read, trace, write
 
@@ -18,20 +18,6 @@ def buffer(on: Board = HBM, **options: int) -> PortBuffer:
     whole = trace(read("in", at(SCAN) * 64, SCAN, size=64), ports={"in": options})
     ((found,),) = (port.buffers for port in measure(whole, on, {}).ports)
     return found
-
-
-def test_the_shapes_of_a_block_hold_36_kilobits() -> None:
-    """UG953, BRAM_SINGLE_MACRO: widths of 37-72 have 512 words, 19-36 1K, 10-18 2K, 5-9 4K, 3-4 8K, 2 16K, 1 32K."""
-    assert [depth for _, depth in SHAPES] == [512, 1024, 2048, 4096, 8192, 16384, 32768]
-    assert all(width * depth in (32768, 36864) for width, depth in SHAPES)
-
-
-@pytest.mark.parametrize(
-    ("words", "bits", "expected"), [(512, 512, 8), (256, 512, 8), (16, 512, 8), (512, 32, 1), (1024, 36, 1), (1, 1, 1)]
-)
-def test_blocks_of_known_memories(words: int, bits: int, expected: int) -> None:
-    """By the shapes above; 16 x 16 beats of 512 bits are 8 blocks (UG1399's formula, counted by hand)."""
-    assert blocks(words, bits) == expected
 
 
 def test_a_buffer_holds_all_beats_under_way() -> None:

@@ -4,9 +4,9 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 from dataclasses import replace
-from functools import lru_cache
 
 from beatwise.memory.demand import Demand
+from beatwise.memory.onchip import blocks
 from beatwise.memory.price import price
 from beatwise.model.access import Direction, Interface
 from beatwise.model.board import Board
@@ -15,7 +15,6 @@ from beatwise.traffic.bursts import longest_burst, outstanding
 
 MOST_OUTSTANDING = 256  #: more are never asked for
 AS_GOOD = 0.98  #: of what the most outstanding get
-SHAPES = ((72, 512), (36, 1024), (18, 2048), (9, 4096), (4, 8192), (2, 16384), (1, 32768))  #: width, words of 36 Kb
 
 
 def buffers(interface: Interface, board: Board, traffic: Iterable[Traffic]) -> tuple[PortBuffer, ...]:
@@ -58,15 +57,3 @@ def _enough(board: Board, ask: Demand) -> int:
     while number < MOST_OUTSTANDING and price(board, replace(ask, outstanding=number)).gbps < AS_GOOD * most:
         number *= 2
     return number
-
-
-@lru_cache(maxsize=256)
-def blocks(words: int, width_bits: int) -> int:
-    """Blocks of 36 Kb that a memory of so many words takes: the best of their shapes, side by side and end to end.
-
-    Shapes: library guide UG953, BRAM_SINGLE_MACRO (72 wide as a simple dual port only, as a FIFO is).
-
-    >>> blocks(256, 512), blocks(512, 512), blocks(1024, 512), blocks(512, 32)
-    (8, 8, 15, 1)
-    """
-    return min(-(-width_bits // width) * -(-words // depth) for width, depth in SHAPES)
