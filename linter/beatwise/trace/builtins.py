@@ -2,9 +2,9 @@
 
 from __future__ import annotations
 
-from beatwise.model.access import Choice, LoopInstance
+from beatwise.model.access import Choice, Direction, LoopInstance
 from beatwise.model.form import ONE, ZERO, Form, counter, data, number, renumbered, symbol_form
-from beatwise.model.kernel import Call, Expression
+from beatwise.model.kernel import Call, Expression, Member
 from beatwise.model.operations import div, floordiv, less, maximum, minimum, negation, select
 from beatwise.model.place import Place
 from beatwise.model.types import (
@@ -39,6 +39,7 @@ COPIES = {"memcpy", "memmove", "__builtin_memcpy", "__builtin_memmove"}
 SILENT = {"printf", "fprintf", "puts", "assert", "__assert_fail", "exit", "abort"}
 READS = {"read", "read_nb", "try_read", "peek", "try_peek", "get", "pop", "front"}
 WRITES = {"write", "write_nb", "try_write", "put", "push", "close", "try_close"}
+ADDRESSES: dict[str, Direction] = {"read_addr": "read", "write_addr": "write"}  #: queues of a port's addresses
 TESTS = {"empty", "full", "size", "available", "eot", "try_eot", "exist", "try_open", "open"}
 
 
@@ -95,6 +96,10 @@ class Builtins(Evaluator):
         receiver = call.receiver
         assert receiver is not None
         kind = bare(receiver.type)
+        if isinstance(receiver, Member) and receiver.field in ADDRESSES and call.name in WRITES and call.arguments:
+            asked = bare(receiver.base.type)
+            if isinstance(asked, BurstPointerType):
+                return self._address_request(call, receiver, asked, state)
         if isinstance(kind, PointerType) and isinstance(kind.to, StreamType | VectorType | BurstPointerType):
             kind = kind.to
         if isinstance(kind, StreamType):
@@ -109,6 +114,14 @@ class Builtins(Evaluator):
             pieces = [self.number(receiver, state), *(self.number(a, state) for a in call.arguments)]
             return Number(depending(*pieces))
         return None
+
+    def _address_request(self, call: Call, receiver: Member, kind: BurstPointerType, state: State) -> Value:
+        """An address put into a port's own queue: an access there. That the queue has room is no matter of data."""
+        base = self._burst_base(self._object(receiver.base, state), state, call.place)
+        spot = shifted(base, self.number(call.arguments[0], state), kind.to)
+        if isinstance(spot, MemorySpot):
+            self._access(spot, ADDRESSES[receiver.field], call.place, state, manual=True)
+        return self.lost("whether the queue had room", call.place)
 
     def _integer(self, call: Call, state: State) -> Value:
         assert call.receiver is not None

@@ -450,6 +450,8 @@ class Evaluator(Machine):
     def _name_spot(self, key: str, kind: Type, state: State) -> Spot:
         root = self.root(key)
         declared = self.types.get(root, kind)
+        if root[1] == 0 and not self.scouting and self.names.get(root) in self.arguments:
+            self.touched.add(self.names[root])
         if root[1] == 0 and root not in state.cells and key in self.program.globals:
             self.define_global(key, state)
         spot = LocalSpot(root, (), kind if isinstance(declared, ReferenceType) else declared)

@@ -130,6 +130,7 @@ class Machine:
         self._activations = count(1)
         self._loops = count(1)
         self.calls: list[str] = []
+        self.touched: set[str] = set()  #: the arguments that the followed code mentions
         #: what was loaded in this iteration and not stored to since: by argument, offset, part, type, and loops
         self.loaded: dict[tuple[str, Form, str, Type, tuple[int, ...]], Symbol] = {}
         self.processes: dict[str, list[Place]] = {}  #: by function: the calls that start it as a process

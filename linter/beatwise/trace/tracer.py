@@ -131,6 +131,14 @@ def _trace(program: Program, top: Function, given: Mapping[str, int]) -> Trace:
     accesses, operations = machine.record.finished()
     accesses = steered(tuple(_jumped(access, machine.jumps) for access in accesses))
     parameters.update(machine.given_used)
+    silent = machine.touched - {access.argument for access in accesses}
+    problems += [
+        Problem(
+            top.place.file, top.place.line, f"{top.name}: no access through {name} was found, although it is mentioned"
+        )
+        for name in arguments
+        if name in silent
+    ]
     problems += [Problem(place.file, place.line, what) for place, what in dict.fromkeys(machine.notes)]
     return Trace(
         kernel=top.name,

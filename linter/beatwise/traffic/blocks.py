@@ -47,16 +47,16 @@ def blocked(index: int, walk: Walk, beside: Neighbours) -> tuple[Block, ...]:
     """All that keeps the access from bursts; empty when nothing does.
 
     What counts is the innermost loop that moves the access: a condition, a length or a choice that stays the same
-    throughout that loop does no harm.
+    throughout that loop does no harm. What asks for its addresses itself is held up by neither guard nor exit.
     """
     access, loop = beside.accesses[index], moving_loop(beside.accesses[index])
     if access.unresolved is not None:
         return ()
     found: list[Block] = []
     if loop is not None:
-        if any(_decides(guard, access, loop) for guard in beside.guards[index]):
+        if not access.manual and any(_decides(guard, access, loop) for guard in beside.guards[index]):
             found.append("data-dependent-guard")
-        if loop.data_exit is not None:
+        if not access.manual and loop.data_exit is not None:
             found.append("data-dependent-exit")
         if _is_interleaved(index, beside):
             found.append("interleaved")
