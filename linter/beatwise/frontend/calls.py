@@ -5,7 +5,7 @@ from __future__ import annotations
 from beatwise.frontend import kinds, numbers
 from beatwise.frontend.conversions import converted, same
 from beatwise.frontend.initials import braced
-from beatwise.frontend.libclang import Cursor, library, operands
+from beatwise.frontend.libclang import Cursor, Location, library, location, operands
 from beatwise.frontend.lowering import Callee, Lowering
 from beatwise.frontend.objects import dereferenced, this_object
 from beatwise.model.kernel import Assign, Build, Call, Expression, FunctionName, Index, Items, Literal, Opaque
@@ -75,11 +75,20 @@ def _names(given: Lowering, member: Cursor, name: str) -> bool:
 
 
 def _receiver(given: Lowering, member: Cursor) -> Expression:
+    lib = library()
     parts = operands(member)
+    if not given.name(lib.clang_getCursorReferenced(member)).startswith("operator"):
+        named = _offset(lib.clang_getCursorLocation(member))  # what comes after the name are the template's arguments
+        starts = [(part, lib.clang_getRangeStart(lib.clang_getCursorExtent(part))) for part in parts]
+        parts = [part for part, start in starts if _offset(start) <= named]
     if not parts:
         return this_object(given, member)
     base = given.expression(parts[0])
     return dereferenced(base) if given.is_pointer(parts[0]) else base
+
+
+def _offset(raw: Location) -> int:
+    return location(raw, spelled=True)[3]
 
 
 def _arguments(given: Lowering, passed: list[Cursor], declaration: Cursor, callee: Callee) -> tuple[Expression, ...]:

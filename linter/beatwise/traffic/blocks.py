@@ -47,7 +47,7 @@ def blocked(index: int, walk: Walk, beside: Neighbours) -> tuple[Block, ...]:
     """All that keeps the access from bursts; empty when nothing does.
 
     What counts is the innermost loop that moves the access: a condition, a length or a choice that stays the same
-    throughout that loop does no harm. What asks for its addresses itself is held up by neither guard nor exit.
+    throughout that loop does no harm. What asks for its bursts itself is stopped by none of that.
     """
     access, loop = beside.accesses[index], moving_loop(beside.accesses[index])
     if access.unresolved is not None:
@@ -58,9 +58,9 @@ def blocked(index: int, walk: Walk, beside: Neighbours) -> tuple[Block, ...]:
             found.append("data-dependent-guard")
         if not access.manual and loop.data_exit is not None:
             found.append("data-dependent-exit")
-        if _is_interleaved(index, beside):
+        if not access.manual and _is_interleaved(index, beside):
             found.append("interleaved")
-        if _is_updated(index, loop, beside):
+        if not access.manual and _is_updated(index, loop, beside):
             found.append("load-and-store")
     if access.volatile:
         found.append("volatile")
