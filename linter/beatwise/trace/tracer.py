@@ -20,6 +20,7 @@ from beatwise.model.types import (
     StreamType,
     Type,
 )
+from beatwise.trace.aggregates import aggregated_bytes, without_padding
 from beatwise.trace.interfaces import interfaces_of, is_memory
 from beatwise.trace.loops import Looper
 from beatwise.trace.machine import STEPS_AT_MOST, Frame, OutOfSteps
@@ -129,6 +130,7 @@ def _trace(program: Program, top: Function, given: Mapping[str, int]) -> Trace:
         problems.append(Problem(top.place.file, top.place.line, f"{top.name}: nested too deeply to be followed"))
     machine.record.forget_places_of_written()
     accesses, operations = machine.record.finished()
+    accesses = without_padding(accesses, aggregated_bytes(top))
     accesses = steered(tuple(_jumped(access, machine.jumps) for access in accesses))
     parameters.update(machine.given_used)
     silent = machine.touched - {access.argument for access in accesses}
